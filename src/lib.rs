@@ -6,8 +6,10 @@
 #![warn(missing_docs)]
 
 pub mod house;
+pub mod reading;
 pub mod reduction;
 pub mod report;
 pub mod rules;
+pub mod sheet;
 pub mod sky;
 pub mod span;
