@@ -71,3 +71,51 @@ impl Findings {
         self.list.last_mut().expect("just pushed")
     }
 }
+
+// ---- stub until the rules' own branch is merged: take theirs ----
+
+/// Every rule.
+pub const TABLE: &[Rule] = &[];
+
+/// Which rules are asked.
+#[derive(Clone, Debug, Default)]
+pub struct Selection {
+    /// Only these, where any is named.
+    pub only: Vec<String>,
+    /// Not these.
+    pub except: Vec<String>,
+}
+
+/// The rule of that name.
+pub fn find(name: &str) -> Option<&'static Rule> {
+    TABLE.iter().find(|rule| rule.name == name)
+}
+
+/// The nearest rule.
+pub fn nearest(_name: &str) -> Option<&'static Rule> {
+    None
+}
+
+impl Rule {
+    /// Its page.
+    pub fn page(&self) -> String {
+        self.page.to_owned()
+    }
+}
+
+/// Judges one report.
+pub fn examine(
+    report: Report,
+    meant: Meant,
+    _house: &House,
+    _now_utc: (f64, f64),
+    _text: &str,
+    _selection: &Selection,
+) -> crate::report::Examined {
+    crate::report::Examined {
+        report,
+        meant,
+        findings: Vec::new(),
+        slips: Vec::new(),
+    }
+}
