@@ -250,7 +250,7 @@ fn one(
             ),
         );
     }
-    let sheet = match Sheet::decode(name, bytes) {
+    let sheet = match Sheet::decode(name, &bytes) {
         Ok(sheet) => sheet,
         Err(e) if walked => return run.note(&shown, format!("passed over: {e}")),
         Err(e) => return run.fail(&shown, e.to_string(), "save it as plain text and try again"),

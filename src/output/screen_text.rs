@@ -166,7 +166,7 @@ fn slips(examined: &Examined, out: &mut impl Write) -> io::Result<()> {
 pub fn write_house_error(error: &HouseError, style: Style, out: &mut impl Write) -> io::Result<()> {
     let name = error.path.display().to_string();
     let handler = style.handler();
-    let sheet = Sheet::decode(name.clone(), error.text.clone().into_bytes()).ok();
+    let sheet = Sheet::decode(name.clone(), error.text.as_bytes()).ok();
     for mistake in &error.mistakes {
         let window = match (&sheet, mistake.span) {
             (Some(sheet), Some(span)) => Some(Window::on(sheet, &name, span, &[])),
