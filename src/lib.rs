@@ -9,5 +9,6 @@ pub mod house;
 pub mod reduction;
 pub mod report;
 pub mod rules;
+pub mod slips;
 pub mod sky;
 pub mod span;
