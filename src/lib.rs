@@ -12,12 +12,9 @@ pub mod reading;
 pub mod reduction;
 pub mod report;
 pub mod rules;
-<<<<<<< HEAD
 pub mod run;
 pub mod sheet;
-=======
 pub mod slips;
->>>>>>> w-rules
 pub mod sky;
 pub mod span;
 

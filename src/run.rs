@@ -28,7 +28,7 @@ pub fn examine_sheet(
         .into_iter()
         .map(|report| {
             let meant = reduction::mean(&report, house, to);
-            rules::examine(report, meant, house, now_utc, &sheet.text, selection)
+            rules::examine(report, meant, house, to, now_utc, &sheet.text, selection)
         })
         .collect()
 }
@@ -119,7 +119,24 @@ pub fn run(wanted: &Wanted) -> Run {
             file(&input, false, wanted, &mut houses, &mut run);
         }
     }
+    together(&mut run, wanted);
     run
+}
+
+/// What the reports of a run say of one another.
+fn together(run: &mut Run, wanted: &Wanted) {
+    let to = wanted.to.unwrap_or(House::default().canonical);
+    let mut runs: Vec<rules::Run> = run
+        .sheets
+        .iter_mut()
+        .map(|s| rules::Run {
+            sheet: &s.sheet.name,
+            text: &s.sheet.text,
+            house: &s.house,
+            examined: &mut s.examined,
+        })
+        .collect();
+    rules::together(&mut runs, to, wanted.now_utc, &wanted.selection);
 }
 
 impl Run {
