@@ -1,5 +1,8 @@
 //! A report brought to the wanted equinox, with its step: from as written to as meant.
 
+pub mod instant;
+pub mod site;
+
 use crate::house::House;
 use crate::report::{Frame, Meant, Report};
 

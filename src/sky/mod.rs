@@ -6,6 +6,7 @@ pub mod bodies;
 pub mod catalogue;
 pub mod constellations;
 pub mod horizon;
+pub mod time;
 
 /// A direction: ICRS right ascension and declination unless said otherwise, degrees.
 #[derive(Clone, Copy, PartialEq, Debug)]
