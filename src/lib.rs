@@ -14,8 +14,8 @@ pub mod report;
 pub mod rules;
 pub mod run;
 pub mod sheet;
-pub mod slips;
 pub mod sky;
+pub mod slips;
 pub mod span;
 
 pub use run::examine_sheet;

@@ -19,8 +19,6 @@ pub struct Found {
     pub other_forms: Vec<(Position, Option<Spanned<Tagged>>)>,
     /// Tags in its label, between its numbers, or right beside it.
     pub tags: Vec<Spanned<Tagged>>,
-    /// Uncertainties written on it.
-    pub uncertainties: Vec<Spanned<super::uncertainty::Uncertainty>>,
 
     /// Index of its first atom (label included).
     pub first: usize,
@@ -44,7 +42,6 @@ enum Axis {
 #[derive(Default, Clone)]
 struct Gathered {
     tags: Vec<Spanned<Tagged>>,
-    uncertainties: Vec<Spanned<super::uncertainty::Uncertainty>>,
     unit: Option<AngleUnit>,
 }
 
@@ -174,7 +171,7 @@ impl<'t> Finder<'_, 't> {
                     }
                     g.tags.push(Spanned::new(*t, atom.span));
                 }
-                Kind::Uncertainty(u) => g.uncertainties.push(Spanned::new(*u, atom.span)),
+                Kind::Uncertainty(_) => {}
                 Kind::LineEnd
                 | Kind::Mark(
                     ',' | ';' | '/' | '|' | '&' | ':' | ')' | ']' | '}' | '~' | '·' | '-' | '–',
@@ -195,7 +192,6 @@ impl<'t> Finder<'_, 't> {
                         break None;
                     };
                     g.tags.append(&mut h.tags);
-                    g.uncertainties.append(&mut h.uncertainties);
                     break Some((dec, used, which == Axis::PolarDistance));
                 }
                 Kind::Word(p)
@@ -288,7 +284,6 @@ impl<'t> Finder<'_, 't> {
                     position: p,
                     other_forms,
                     tags: g.tags,
-                    uncertainties: g.uncertainties,
 
                     first: i,
                     end,
@@ -312,7 +307,6 @@ impl<'t> Finder<'_, 't> {
                     position: p,
                     other_forms: Vec::new(),
                     tags: g.tags,
-                    uncertainties: g.uncertainties,
 
                     first: i,
                     end: used,
@@ -355,7 +349,6 @@ impl<'t> Finder<'_, 't> {
                     position: p,
                     other_forms: Vec::new(),
                     tags: g.tags,
-                    uncertainties: g.uncertainties,
 
                     first: i,
                     end,
@@ -374,7 +367,6 @@ impl<'t> Finder<'_, 't> {
                     position: p,
                     other_forms: Vec::new(),
                     tags: g.tags,
-                    uncertainties: g.uncertainties,
 
                     first: i,
                     end: used,
@@ -434,7 +426,6 @@ impl<'t> Finder<'_, 't> {
             position: p,
             other_forms: Vec::new(),
             tags: Vec::new(),
-            uncertainties: Vec::new(),
 
             first: i,
             end: last,
@@ -488,7 +479,7 @@ impl<'t> Finder<'_, 't> {
             ra.parts().len() > 1 && dec.parts().len() > 1 || dec.sign.is_some() || dec_marked;
         if strong
             || tag && (pairs_well || ra.marked_unit().is_some())
-            || named && pairs_well && in_range(&ra, &dec)
+            || (named || self.form_led(i, from)) && pairs_well && in_range(&ra, &dec)
         {
             Some(found)
         } else {
@@ -517,7 +508,6 @@ impl<'t> Finder<'_, 't> {
                 position: p,
                 other_forms: Vec::new(),
                 tags,
-                uncertainties: std::mem::take(&mut g.uncertainties),
 
                 first: i,
                 end: i + 1,
@@ -559,7 +549,6 @@ impl<'t> Finder<'_, 't> {
             position: p,
             other_forms: Vec::new(),
             tags,
-            uncertainties: std::mem::take(&mut g.uncertainties),
 
             first: i,
             end,
@@ -606,7 +595,7 @@ impl<'t> Finder<'_, 't> {
             match &atom.kind {
                 Kind::Angle(_) | Kind::Run(_) | Kind::Joined(_) => return Some(i),
                 Kind::Equinox(t) => g.tags.push(Spanned::new(*t, atom.span)),
-                Kind::Uncertainty(u) => g.uncertainties.push(Spanned::new(*u, atom.span)),
+                Kind::Uncertainty(_) => {}
                 Kind::LineEnd if lines && line_ends == 0 => line_ends += 1,
                 Kind::Mark(c) if "=:,;/|()[]{}~.-–&≈<>*_`\"".contains(*c) => {}
                 Kind::Word(p) => {
@@ -654,7 +643,7 @@ impl<'t> Finder<'_, 't> {
             }
             match &atom.kind {
                 Kind::Equinox(t) => g.tags.push(Spanned::new(*t, atom.span)),
-                Kind::Uncertainty(u) => g.uncertainties.push(Spanned::new(*u, atom.span)),
+                Kind::Uncertainty(_) => {}
                 Kind::LineEnd if line_ends == 0 => line_ends += 1,
                 Kind::Mark(_) => {}
                 Kind::Word(p)
@@ -682,7 +671,7 @@ impl<'t> Finder<'_, 't> {
             let atom = &self.atoms[i];
             match &atom.kind {
                 Kind::Angle(_) | Kind::Run(_) | Kind::Joined(_) => return Some(i),
-                Kind::Uncertainty(u) => g.uncertainties.push(Spanned::new(*u, atom.span)),
+                Kind::Uncertainty(_) => {}
                 Kind::Equinox(t) => g.tags.push(Spanned::new(*t, atom.span)),
                 Kind::Mark(
                     ',' | ';' | '/' | '|' | '&' | '(' | ')' | '[' | ']' | '·' | '{' | '}',
@@ -766,8 +755,7 @@ impl<'t> Finder<'_, 't> {
                     i += 1
                 }
                 Kind::Angle(_) | Kind::Run(_) => return self.angle_at(i, Axis::Dec, None),
-                Kind::Uncertainty(u) => {
-                    g.uncertainties.push(Spanned::new(*u, atom.span));
+                Kind::Uncertainty(_) => {
                     i += 1;
                 }
                 _ => return None,
@@ -888,6 +876,20 @@ impl<'t> Finder<'_, 't> {
             }
         }
         false
+    }
+
+    /// "that is", "=" or a bracket opened right after a position: another form of it follows.
+    fn form_led(&self, i: usize, from: usize) -> bool {
+        for k in (from..i).rev().take(3) {
+            match &self.atoms[k].kind {
+                Kind::Word(p) if p.means(Word::ThatIs) => return true,
+                Kind::Mark('=' | '≡') => return true,
+                Kind::Mark(_) | Kind::LineEnd => {}
+                Kind::Word(p) if p.means(Word::Filler) => {}
+                _ => return false,
+            }
+        }
+        from > 0 && i.saturating_sub(from) <= 2
     }
 
     /// First on its line, or after a name and perhaps a colon or a date: the row of a list.

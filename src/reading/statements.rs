@@ -86,6 +86,15 @@ impl<'t> Gatherer<'_, 't> {
                     self.out.tags.push(Spanned::new(*t, atom.span));
                 }
             }
+            Kind::Uncertainty(u) if self.led_by_position(i) => {
+                let arcsec = match u.mark {
+                    Mark::DoublePrime => Some(u.value),
+                    Mark::Prime => Some(u.value * 60.0),
+                    Mark::Degree => Some(u.value * 3600.0),
+                    _ => None,
+                };
+                self.out.uncertainty_arcsec = arcsec.map(|a| Spanned::new(a, atom.span));
+            }
             Kind::Site(site) => return self.site(i, (**site).clone()),
             Kind::Elevation(metres) => {
                 if let Some(site) = self.out.sites.last_mut()

@@ -139,7 +139,7 @@ pub fn rows(sheet: &Sheet, head: &Head, end: usize) -> Vec<Row> {
 
 /// The rows of a head from a later line on.
 pub fn rows_from(sheet: &Sheet, head: &Head, from: usize, end: usize) -> Vec<Row> {
-    let mut found = Vec::new();
+    let mut found: Vec<Row> = Vec::new();
     let mut misses = 0;
     for line in from..end {
         let body = sheet.lines()[line].body;
@@ -169,7 +169,32 @@ pub fn rows_from(sheet: &Sheet, head: &Head, from: usize, end: usize) -> Vec<Row
             }
         }
     }
+    padded_seconds(&mut found);
     found
+}
+
+/// A column in which every clock time ends in :00 was written by the minute and padded by its format: the seconds are no digits.
+fn padded_seconds(rows: &mut [Row]) {
+    let seconds = |r: &Row| {
+        r.said
+            .instants
+            .first()
+            .and_then(|i| i.clock)
+            .map(|c| c.second)
+    };
+    let padded = rows.len() >= 4
+        && rows.iter().all(|r| {
+            seconds(r).is_some_and(|s| s.is_some_and(|s| s.mantissa == 0 && s.places == 0))
+        });
+    if padded {
+        for row in rows {
+            for instant in &mut row.said.instants {
+                if let Some(clock) = &mut instant.clock {
+                    clock.second = None;
+                }
+            }
+        }
+    }
 }
 
 /// True where most lines of a block are rows of an earlier head.
@@ -662,7 +687,6 @@ fn bare_found(
         position,
         other_forms: Vec::new(),
         tags: Vec::new(),
-        uncertainties: Vec::new(),
 
         first: 0,
         end: 0,

@@ -23,7 +23,10 @@ pub fn exchanged(angle: &Angle) -> impl Iterator<Item = Changed> + use<> {
         let digits = usize::from(number.whole_digits) + usize::from(number.places);
         for k in 0..digits.saturating_sub(1) as u32 {
             let unit = 10u64.pow(k);
-            let (low, high) = (number.mantissa / unit % 10, number.mantissa / unit / 10 % 10);
+            let (low, high) = (
+                number.mantissa / unit % 10,
+                number.mantissa / unit / 10 % 10,
+            );
             if low == high {
                 continue;
             }
@@ -53,7 +56,8 @@ pub fn miskeyed(angle: &Angle) -> impl Iterator<Item = Changed> + use<> {
             let old = number.mantissa / unit % 10;
             for new in (0..10).filter(|new| *new != old) {
                 let mut changed = *angle;
-                changed.parts_mut()[part].number.mantissa = number.mantissa - old * unit + new * unit;
+                changed.parts_mut()[part].number.mantissa =
+                    number.mantissa - old * unit + new * unit;
                 list.push(Changed {
                     angle: changed,
                     part,
@@ -83,5 +87,10 @@ pub fn miskeyed(angle: &Angle) -> impl Iterator<Item = Changed> + use<> {
 
 /// Minutes and seconds below 60.
 fn in_range(changed: &Changed) -> bool {
-    changed.angle.parts().iter().skip(1).all(|part| part.number.value() < 60.0)
+    changed
+        .angle
+        .parts()
+        .iter()
+        .skip(1)
+        .all(|part| part.number.value() < 60.0)
 }
