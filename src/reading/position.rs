@@ -474,7 +474,10 @@ impl<'t> Finder<'_, 't> {
                 && padded(&dec)
                 && in_range(&ra, &dec);
         let named = self.word_before(i)
-            || self.named_line(i) && padded(&ra) && (dec.sign.is_some() || dec.compass.is_some());
+            || self.named_line(i)
+                && ra.parts().len() > 1
+                && padded(&ra)
+                && (dec.sign.is_some() || dec.compass.is_some());
         let pairs_well =
             ra.parts().len() > 1 && dec.parts().len() > 1 || dec.sign.is_some() || dec_marked;
         if strong
@@ -838,6 +841,16 @@ impl<'t> Finder<'_, 't> {
                     return !p
                         .meanings()
                         .any(|w| matches!(w, Word::Weekday(_) | Word::Month(_)));
+                }
+                // coordinates of a site
+                Kind::Word(p)
+                    if p.means(Word::Site)
+                        && self
+                            .atoms
+                            .get(k + 1)
+                            .is_some_and(|a| a.is_mark(':') || a.is_mark('=')) =>
+                {
+                    return true;
                 }
                 Kind::Word(_) | Kind::Plain => {
                     words += 1;

@@ -342,7 +342,14 @@ impl Head {
                             Word::Uncertainty => set(Column::Uncertainty, 10),
                             Word::Degrees => unit = Some(AngleUnit::Degrees),
                             Word::Hours => unit = Some(AngleUnit::Hours),
-                            Word::Feet => self.feet = true,
+                            Word::Elevation if atom.span.len() == 1 => {
+                                unit = Some(AngleUnit::Hours)
+                            }
+                            Word::Feet => {
+                                self.feet = true;
+                                set(Column::Elevation, 7);
+                            }
+                            Word::Metres => set(Column::Elevation, 7),
                             _ => {}
                         }
                     }
