@@ -47,7 +47,7 @@ impl Body {
             Body::Jupiter => 81.0,
             Body::Saturn => 97.0,
             Body::Uranus => 91.0,
-            Body::Neptune => 10.0,
+            Body::Neptune => 10.2,
         }
     }
 

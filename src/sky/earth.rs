@@ -2,7 +2,7 @@
 //!
 //! 1900 to 2100: ERFA `epv00` (VSOP2000; 13 km and 4 mm/s at worst against DE405). Outside, where `epv00` is not given:
 //! the Earth–Moon barycentre of `plan94` (Simon et al. 1994) less the Moon of `moon98`, and the Sun about the
-//! barycentre from the four giant planets; the aberration computed with it is off by less than 1 mas from 1600 to 2200.
+//! barycentre from the four giant planets; the aberration computed with it is off by less than 2 mas from 1750 to 2150.
 
 use sofars::eph::{epv00, moon98, plan94};
 

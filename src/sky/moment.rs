@@ -1,7 +1,8 @@
 //! What every position at one instant (and one site) shares, computed once.
 
+use super::icrs::Motion;
 use super::{Direction, Ground, earth, time};
-use sofars::astro::{IauAstrom, apcs, atciqz, aticq, atioq, atoiq, pvtob, refco};
+use sofars::astro::{IauAstrom, apcs, atciq, atciqz, aticq, atioq, atoiq, pvtob, refco};
 use sofars::erst::era00;
 use sofars::pnp::{bpn2xy, eors, pnm06a, s06, sp00};
 use sofars::vm::trxpv;
@@ -91,13 +92,28 @@ impl Moment {
     /// Geocentric apparent place (true equator and equinox of date) of an ICRS astrometric direction: ERFA `atciqz`.
     pub fn apparent(&self, icrs: Direction) -> Direction {
         let (ra, dec) = icrs.radians();
-        Direction::from_radians(atciqz(ra, dec, &mut self.astrom.clone()))
+        Direction::from_radians(atciqz(ra, dec, &mut { self.astrom }))
+    }
+
+    /// Geocentric apparent place of a star from its ICRS place at J2000.0 and its motion: ERFA `atciq`.
+    pub fn apparent_of_star(&self, icrs: Direction, motion: Motion) -> Direction {
+        let (ra, dec) = icrs.radians();
+        let arcsec = |x: f64| (x / 3600.0).to_radians();
+        Direction::from_radians(atciq(
+            ra,
+            dec,
+            arcsec(motion.ra_arcsec) / dec.cos().max(1e-9),
+            arcsec(motion.dec_arcsec),
+            motion.parallax_arcsec,
+            motion.radial_km_s,
+            &mut { self.astrom },
+        ))
     }
 
     /// ICRS astrometric direction of a geocentric apparent place: ERFA `aticq`.
     pub fn astrometric(&self, apparent: Direction) -> Direction {
         let (ra, dec) = apparent.radians();
-        Direction::from_radians(aticq(ra, dec, &mut self.astrom.clone()))
+        Direction::from_radians(aticq(ra, dec, &mut { self.astrom }))
     }
 
     /// The instant seen from a place on the ground, with a standard atmosphere.
@@ -237,11 +253,6 @@ impl Station {
     ) -> Direction {
         let zenith = 90.0 - altitude_deg.clamp(-90.0, 90.0);
         self.from_observed("A", azimuth_deg, zenith, refracted)
-    }
-
-    /// ICRS astrometric direction of a topocentric airless hour angle and declination.
-    pub fn from_hour_angle(&self, hour_angle_deg: f64, dec_deg: f64) -> Direction {
-        self.from_observed("H", hour_angle_deg, dec_deg.clamp(-90.0, 90.0), false)
     }
 
     fn from_observed(
