@@ -29,8 +29,8 @@ fn bodies_agree_with_de421() {
         let off = separation_deg(place.icrs, astrometric) * 3600.0;
         let seen = separation_deg(moment.apparent(place.icrs), apparent) * 3600.0;
         assert!((place.distance_au / number(7) - 1.0).abs() < 3e-3, "{line}");
-        // both places are off by the same theory
-        assert!((off - seen).abs() < 0.2, "{line}: {off} {seen}");
+        // both places are off by the same theory; a planet this side of the Sun is bent less than a star (1.8″ at its limb)
+        assert!((off - seen).abs() < 1.8, "{line}: {off} {seen}");
         worst.entry(part[2].to_string()).or_default().push(off);
         let allowed = body.theory_arcsec() * 1.01 + 0.005;
         assert!(off <= allowed, "{line}: {off} arcsec");

@@ -23,6 +23,11 @@ use std::cell::OnceCell;
 
 /// What a report means under the house rules, restated in the frame `to`. Never fails: what cannot be had is `None`.
 pub fn mean(report: &Report, house: &House, to: Frame) -> Meant {
+    mean_by(report, house, to, Moment::new)
+}
+
+/// The same with another way to an instant: [`Moment::shared`] for a run of many reports.
+pub fn mean_by(report: &Report, house: &House, to: Frame, clock: Clock) -> Meant {
     let mut meant = Meant::default();
     (meant.site, meant.site_trouble, meant.site_register_deg) = site::resolve(report, house);
     (meant.instant, meant.instant_trouble) = instant::resolve(report, house, meant.site.as_ref());
@@ -42,7 +47,7 @@ pub fn mean(report: &Report, house: &House, to: Frame) -> Meant {
     };
     meant.read = Some(read);
 
-    let sky = Sky::new(&meant);
+    let sky = Sky::new(&meant, clock);
     let written = to::Written {
         read,
         from_origin: understood.from_origin,
@@ -58,6 +63,9 @@ pub fn mean(report: &Report, house: &House, to: Frame) -> Meant {
     meant
 }
 
+/// A way from UTC to what the sky needs of an instant.
+pub type Clock = fn((f64, f64)) -> Moment;
+
 /// The instant and the site of a report as the sky needs them, each computed when first asked for, and once.
 pub struct Sky {
     /// UTC of the observation, however doubtful its hour.
@@ -65,13 +73,14 @@ pub struct Sky {
     /// Nothing is doubtful about the instant and the site.
     sure: bool,
     ground: Option<crate::sky::Ground>,
+    clock: Clock,
     moment: OnceCell<Moment>,
     station: OnceCell<Station>,
 }
 
 impl Sky {
     /// Of a report whose instant and site are resolved.
-    pub fn new(meant: &Meant) -> Sky {
+    pub fn new(meant: &Meant, clock: Clock) -> Sky {
         Sky {
             utc: meant
                 .instant
@@ -83,6 +92,7 @@ impl Sky {
                 longitude_deg: s.longitude_deg,
                 elevation_m: s.elevation_m.unwrap_or(0.0),
             }),
+            clock,
             moment: OnceCell::new(),
             station: OnceCell::new(),
         }
@@ -96,7 +106,7 @@ impl Sky {
     /// The instant, if there is one.
     pub fn moment(&self) -> Option<&Moment> {
         let utc = self.utc?;
-        Some(self.moment.get_or_init(|| Moment::new(utc)))
+        Some(self.moment.get_or_init(|| (self.clock)(utc)))
     }
 
     /// The instant at the site, if there are both and nothing is doubtful about them.

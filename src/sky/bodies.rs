@@ -153,15 +153,17 @@ pub fn moon_phase(moment: &Moment) -> (f64, bool) {
 fn astrometric(body: Body, moment: &Moment, observer: [f64; 3]) -> [f64; 3] {
     let earth = moment.earth.barycentric;
     let eye: [f64; 3] = std::array::from_fn(|i| earth[0][i] + observer[i]);
-    let mut days = 0.0;
+    // the Moon's light is 1.28 s on its way, give or take 0.08: 0.04″ of its motion
+    let (mut days, rounds) = match body {
+        Body::Moon => (0.002_57 * LIGHT_DAYS_PER_AU, 1),
+        Body::Sun => (0.0, 1), // it moves 0.0001″ in the eight minutes
+        _ => (0.0, 3),
+    };
     let mut vector = [0.0; 3];
-    for _ in 0..3 {
+    for _ in 0..rounds {
         let then = barycentric(body, moment, days);
         vector = std::array::from_fn(|i| then[i] - eye[i]);
         days = norm(vector) * LIGHT_DAYS_PER_AU;
-        if body == Body::Sun {
-            break; // it moves 0.0001″ in the eight minutes
-        }
     }
     vector
 }
