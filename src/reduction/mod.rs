@@ -16,7 +16,7 @@ pub use print::printed;
 pub use target::parse_target;
 
 use crate::house::{House, WhenMissing};
-use crate::report::{Frame, Meant, ReadPosition, Report};
+use crate::report::{EquinoxTag, Frame, Meant, ReadPosition, Report};
 use crate::sky::moment::{Moment, Station};
 use crate::sky::{Direction, constellations};
 use std::cell::OnceCell;
@@ -35,11 +35,13 @@ pub fn mean_by(report: &Report, house: &House, to: Frame, clock: Clock) -> Meant
         return meant;
     };
     let mut understood = frame::understand(report.position.kind, &report.equinoxes);
-    if understood.frame.is_none() {
-        if let WhenMissing::Assume(frame) = house.when_missing {
-            understood.frame = Some(frame);
-            meant.assumed.push(format!("equinox {}", frame.equinox));
-        }
+    // a house rule fills in what nobody wrote, not what was written and contradicts itself
+    let year_written = |t: &EquinoxTag| !t.misspelt && t.year.is_some();
+    let unsaid = !report.equinoxes.iter().any(|t| year_written(&t.0.value));
+    if let (None, true, WhenMissing::Assume(frame)) = (understood.frame, unsaid, house.when_missing)
+    {
+        understood.frame = Some(frame);
+        meant.assumed.push(format!("equinox {}", frame.equinox));
     }
     let read = ReadPosition {
         frame: understood.frame,

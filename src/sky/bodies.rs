@@ -4,7 +4,7 @@
 //! [`Body::theory_arcsec`]: the worst seen at 200 instants from 1900 to 2050 against JPL DE421.
 
 use super::moment::{Moment, Station};
-use super::{Direction, Ground, separation_deg, time};
+use super::{Direction, Ground, separation_deg};
 use sofars::eph::{moon98, plan94};
 
 /// A body of the solar system.
@@ -204,9 +204,4 @@ fn motion(body: Body, moment: &Moment) -> f64 {
 
 fn norm(v: [f64; 3]) -> f64 {
     (v[0] * v[0] + v[1] * v[1] + v[2] * v[2]).sqrt()
-}
-
-/// The Julian epoch (TT) of a moment, for proper motions.
-pub fn julian_epoch(moment: &Moment) -> f64 {
-    time::julian_epoch(moment.tt)
 }

@@ -97,6 +97,11 @@ impl Moment {
         }
     }
 
+    /// The Julian epoch (TT), for proper motions.
+    pub fn julian_epoch(&self) -> f64 {
+        time::julian_epoch(self.tt)
+    }
+
     /// The bias-precession-nutation matrix, GCRS to true equator and equinox of date.
     pub fn matrix(&self) -> &[[f64; 3]; 3] {
         &self.astrom.bpn

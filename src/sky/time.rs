@@ -262,6 +262,13 @@ pub fn ut1_from_utc(utc: (f64, f64), ut1_minus_utc_s: f64) -> (f64, f64) {
     two_part(day, seconds + ut1_minus_utc_s)
 }
 
+/// How far UT1 may be from UTC where it is taken as equal, seconds: 0.9 since 1972 (by which leap seconds keep them
+/// together, ITU-R TF.460), nothing before, when a time is UT itself. One second is 15″ of hour angle.
+pub fn ut1_error_s(utc: (f64, f64)) -> f64 {
+    let (day, _) = day_and_seconds(utc);
+    if day < LEAP_ERA { 0.0 } else { 0.9 }
+}
+
 /// TDB of a UTC instant.
 pub fn tdb_from_utc(utc: (f64, f64)) -> (f64, f64) {
     let tt = tt_from_utc(utc);
