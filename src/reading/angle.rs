@@ -145,6 +145,15 @@ pub fn angle_colons(input: Text<'_>) -> Parsed<'_, Angle> {
         span: at.span_to(rest),
     }];
     let mut rest = rest.skip(1);
+    // "10: 08: 10.5": blanks after the colons, after both; "Suspect 143: 17 49" is a name and a number
+    if rest.as_str().starts_with(' ') {
+        let second = integer(rest.skip(1))
+            .ok()
+            .and_then(|(r, _)| r.as_str().strip_prefix(": "));
+        if !second.is_some_and(|s| s.starts_with(|c: char| c.is_ascii_digit())) {
+            return no(input);
+        }
+    }
     for _ in 0..2 {
         let here = if rest.as_str().starts_with(' ') {
             rest.skip(1)

@@ -6,15 +6,21 @@
 //! and into the production of the same name in `grammar/*.pest`, with examples beside it.
 
 pub mod angle;
+mod assemble;
 pub mod equinox;
 mod fold;
 pub mod instant;
 pub mod marks;
 pub mod number;
+mod position;
 pub mod run;
 pub mod scan;
 pub mod site;
+mod statements;
 pub mod stet;
+mod table;
 pub mod text;
 pub mod uncertainty;
 pub mod words;
+
+pub use assemble::read;

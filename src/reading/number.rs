@@ -40,7 +40,7 @@ pub fn number(input: Text<'_>) -> Parsed<'_, Number> {
         && let Ok((after, places)) = digits(rest.skip(1))
         && whole.as_str().len() + places.as_str().len() <= 18
         // 1,2,3 is a list and 1.2.3 a version or a date
-        && !matches!((after.peek(), after.as_str().chars().nth(1)), (Some('.' | ','), Some(c)) if c.is_ascii_digit())
+        && !(after.peek() == mark && after.as_str().chars().nth(1).is_some_and(|c| c.is_ascii_digit()))
     {
         return Ok((after, of_digits(whole.as_str(), places.as_str())));
     }

@@ -9,7 +9,7 @@ use super::stet::stet;
 use super::text::{Text, is_blank};
 use super::uncertainty::{Uncertainty, uncertainty};
 use super::words::{Phrase, Word, phrase};
-use crate::report::{Angle, InstantWritten, SiteWritten, Stet};
+use crate::report::{Angle, DateWritten, InstantWritten, SiteWritten, Stet};
 use crate::span::{Span, Spanned};
 
 /// One thing on a line.
@@ -66,13 +66,15 @@ impl Atom<'_> {
 }
 
 /// The atoms of one line.
-pub fn atoms<'a>(line: Text<'a>, number: usize, out: &mut Vec<Atom<'a>>) {
+///
+/// `awaiting` is true while a right ascension has been named and its declination not yet: then "Dec" is no December.
+pub fn atoms<'a>(line: Text<'a>, number: usize, awaiting: &mut bool, out: &mut Vec<Atom<'a>>) {
     let mut rest = line;
     let mut after_label = false;
     loop {
         rest = rest.skip_blanks();
         let Some(c) = rest.peek() else { break };
-        let (next, kind) = atom(rest, c, after_label);
+        let (next, kind) = atom(rest, c, after_label, *awaiting);
         let next = if next.at() <= rest.at() {
             rest.skip(c.len_utf8())
         } else {
@@ -85,6 +87,13 @@ pub fn atoms<'a>(line: Text<'a>, number: usize, out: &mut Vec<Atom<'a>>) {
             Kind::Mark('(' | '[' | '=' | ':') => after_label,
             _ => false,
         };
+        if let Kind::Word(p) = &kind {
+            if p.means(Word::RightAscension) || p.means(Word::HourAngle) {
+                *awaiting = true;
+            } else if p.means(Word::Declination) {
+                *awaiting = false;
+            }
+        }
         out.push(Atom {
             kind,
             span: rest.span_to(next),
@@ -94,7 +103,7 @@ pub fn atoms<'a>(line: Text<'a>, number: usize, out: &mut Vec<Atom<'a>>) {
     }
 }
 
-fn atom<'a>(rest: Text<'a>, c: char, after_label: bool) -> (Text<'a>, Kind<'a>) {
+fn atom<'a>(rest: Text<'a>, c: char, after_label: bool, awaiting: bool) -> (Text<'a>, Kind<'a>) {
     let word_start = !rest
         .before()
         .is_some_and(|b| b.is_alphanumeric() || b == '_');
@@ -130,12 +139,27 @@ fn atom<'a>(rest: Text<'a>, c: char, after_label: bool) -> (Text<'a>, Kind<'a>) 
         }
     }
     if !word_start && !after_label {
-        return plain(rest);
+        if c.is_alphanumeric() || c == '_' {
+            return plain(rest);
+        }
+        // a dash glued to a word is a hyphen, not a sign; one between digits parts a compact pair
+        let compact = rest.before().is_some_and(|b| b.is_ascii_digit());
+        if (c == '+' || super::number::is_dash(c)) && !compact {
+            return (rest.skip(c.len_utf8()), Kind::Mark(c));
+        }
+    }
+    if awaiting
+        && let Some((r, p)) = phrase(rest)
+        && p.means(Word::Declination)
+    {
+        return (r, Kind::Word(p));
     }
     let numeric = c.is_ascii_digit();
     let signed = c == '+' || c == '±' || super::number::is_dash(c);
     if (numeric || c.is_alphabetic())
         && let Ok((r, i)) = instant(rest)
+        // "RA 9.5958 Dec +33": no ninth of December
+        && !(awaiting && yearless(&i))
     {
         return (r, Kind::Instant(Box::new(i)));
     }
@@ -210,4 +234,16 @@ fn plain(rest: Text<'_>) -> (Text<'_>, Kind<'_>) {
         rest.skip(end.max(s.chars().next().map_or(1, char::len_utf8))),
         Kind::Plain,
     )
+}
+
+/// A date that leaves out its year and has no clock time.
+fn yearless(i: &InstantWritten) -> bool {
+    i.clock.is_none()
+        && matches!(
+            i.date,
+            Some(Spanned {
+                value: DateWritten::Calendar { year_digits: 0, .. },
+                ..
+            })
+        )
 }

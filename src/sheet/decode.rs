@@ -40,13 +40,25 @@ struct Stretch {
 
 impl Map {
     fn shifted(by: usize) -> Map {
-        Map { stretches: vec![Stretch { text: 0, disk: by, text_step: 1, disk_step: 1 }] }
+        Map {
+            stretches: vec![Stretch {
+                text: 0,
+                disk: by,
+                text_step: 1,
+                disk_step: 1,
+            }],
+        }
     }
 
     fn push(&mut self, text: usize, disk: usize, text_step: usize, disk_step: usize) {
         match self.stretches.last() {
             Some(s) if s.text_step == text_step && s.disk_step == disk_step => {}
-            _ => self.stretches.push(Stretch { text, disk, text_step, disk_step }),
+            _ => self.stretches.push(Stretch {
+                text,
+                disk,
+                text_step,
+                disk_step,
+            }),
         }
     }
 
@@ -73,7 +85,14 @@ pub(super) fn decode(bytes: &[u8]) -> Result<Decoded, SheetError> {
         _ => {
             // UTF-16 without its mark: every other byte of plain text is zero
             let sample = &bytes[..bytes.len().min(4096)];
-            let zeros = |from: usize| sample.iter().skip(from).step_by(2).filter(|b| **b == 0).count();
+            let zeros = |from: usize| {
+                sample
+                    .iter()
+                    .skip(from)
+                    .step_by(2)
+                    .filter(|b| **b == 0)
+                    .count()
+            };
             let half = sample.len() / 2;
             if half > 8 && zeros(1) * 10 > half * 7 && zeros(0) * 10 < half {
                 return wide(bytes, 0, 2, u16_le, "UTF-16");
@@ -98,7 +117,11 @@ fn windows_1252(bytes: &[u8]) -> Result<Decoded, SheetError> {
         map.push(text.len(), i, c.len(), 1);
         text.push_str(&c);
     }
-    checked(text, map, Some("not UTF-8: read as Windows-1252".to_string()))
+    checked(
+        text,
+        map,
+        Some("not UTF-8: read as Windows-1252".to_string()),
+    )
 }
 
 fn u16_le(b: &[u8]) -> u32 {
@@ -115,7 +138,13 @@ fn u32_be(b: &[u8]) -> u32 {
 }
 
 /// Encodings of fixed units of 2 or 4 bytes; broken surrogates become U+FFFD.
-fn wide(bytes: &[u8], skip: usize, unit: usize, value: fn(&[u8]) -> u32, name: &str) -> Result<Decoded, SheetError> {
+fn wide(
+    bytes: &[u8],
+    skip: usize,
+    unit: usize,
+    value: fn(&[u8]) -> u32,
+    name: &str,
+) -> Result<Decoded, SheetError> {
     let mut text = String::with_capacity(bytes.len() / unit);
     let mut map = Map::default();
     let mut at = skip;
@@ -144,11 +173,20 @@ fn wide(bytes: &[u8], skip: usize, unit: usize, value: fn(&[u8]) -> u32, name: &
 /// Refuses what is no text: zeros, or many control characters.
 fn checked(text: String, map: Map, note: Option<String>) -> Result<Decoded, SheetError> {
     let sample: Vec<char> = text.chars().take(8192).collect();
-    let controls = sample.iter().filter(|c| c.is_control() && !matches!(c, '\n' | '\r' | '\t' | '\u{c}' | '\u{1b}' | '\u{b}')).count();
+    let controls = sample
+        .iter()
+        .filter(|c| {
+            c.is_control() && !matches!(c, '\n' | '\r' | '\t' | '\u{c}' | '\u{1b}' | '\u{b}')
+        })
+        .count();
     if text.contains('\0') || controls * 20 > sample.len() {
         return Err(SheetError::Binary);
     }
-    Ok(Decoded { text, notes: note.into_iter().collect(), map })
+    Ok(Decoded {
+        text,
+        notes: note.into_iter().collect(),
+        map,
+    })
 }
 
 #[cfg(test)]
@@ -158,8 +196,14 @@ mod tests {
     #[test]
     fn every_encoding_leads_back_to_its_bytes() {
         let text = "März: −5° 12′ 𝄞 Ω end";
-        let utf16: Vec<u8> = [0xff, 0xfe].into_iter().chain(text.encode_utf16().flat_map(u16::to_le_bytes)).collect();
-        let utf32: Vec<u8> = [0, 0, 0xfe, 0xff].into_iter().chain(text.chars().flat_map(|c| u32::from(c).to_be_bytes())).collect();
+        let utf16: Vec<u8> = [0xff, 0xfe]
+            .into_iter()
+            .chain(text.encode_utf16().flat_map(u16::to_le_bytes))
+            .collect();
+        let utf32: Vec<u8> = [0, 0, 0xfe, 0xff]
+            .into_iter()
+            .chain(text.chars().flat_map(|c| u32::from(c).to_be_bytes()))
+            .collect();
         let bom: Vec<u8> = [0xef, 0xbb, 0xbf].into_iter().chain(text.bytes()).collect();
         for bytes in [utf16.clone(), utf32, bom] {
             let d = decode(&bytes).unwrap();
@@ -167,7 +211,10 @@ mod tests {
             // the word "end" is found where its bytes are
             let at = d.text.find("end").unwrap();
             let disk = d.map.on_disk(at);
-            assert_eq!(bytes.get(disk..).unwrap().iter().find(|b| **b != 0), Some(&b'e'));
+            assert_eq!(
+                bytes.get(disk..).unwrap().iter().find(|b| **b != 0),
+                Some(&b'e')
+            );
             assert_eq!(d.map.on_disk(d.text.len()), bytes.len());
         }
         let latin = decode(b"M\xe4rz 12\xb0N x").unwrap();

@@ -34,7 +34,11 @@ pub(super) fn lines(text: &str) -> Vec<Line> {
             continue;
         }
         found.push(line(text, start, at));
-        start = if bytes[at] == b'\r' && bytes.get(at + 1) == Some(&b'\n') { at + 2 } else { at + 1 };
+        start = if bytes[at] == b'\r' && bytes.get(at + 1) == Some(&b'\n') {
+            at + 2
+        } else {
+            at + 1
+        };
     }
     if start < text.len() || found.is_empty() {
         found.push(line(text, start, text.len()));
@@ -49,7 +53,12 @@ fn line(text: &str, start: usize, end: usize) -> Line {
         let inner = body.trim_start();
         match inner.strip_prefix('>') {
             // "> " and ">>" quote; ">5" at the head of a line is a number's business
-            Some(rest) if rest.is_empty() || rest.starts_with([' ', '>', '\t']) || depth > 0 || !rest.starts_with(|c: char| c.is_ascii_digit()) => {
+            Some(rest)
+                if rest.is_empty()
+                    || rest.starts_with([' ', '>', '\t'])
+                    || depth > 0
+                    || !rest.starts_with(|c: char| c.is_ascii_digit()) =>
+            {
                 depth = depth.saturating_add(1);
                 body = rest;
             }
@@ -59,7 +68,11 @@ fn line(text: &str, start: usize, end: usize) -> Line {
     let trimmed = body.trim_start();
     let from = end - trimmed.len();
     let to = from + trimmed.trim_end().len();
-    Line { whole: Span::new(start, end), body: Span::new(from, to), depth }
+    Line {
+        whole: Span::new(start, end),
+        body: Span::new(from, to),
+        depth,
+    }
 }
 
 /// Groups lines into blocks.
@@ -68,9 +81,15 @@ pub(super) fn blocks(text: &str, lines: &[Line]) -> Vec<Block> {
     let mut first = None;
     for (i, line) in lines.iter().enumerate() {
         let words = line.body.of(text);
-        let rule = words.len() >= 3 && words.chars().all(|c| matches!(c, '-' | '=' | '*' | '_' | '~' | '#')) && !words.contains('|');
+        let rule = words.len() >= 3
+            && words
+                .chars()
+                .all(|c| matches!(c, '-' | '=' | '*' | '_' | '~' | '#'))
+            && !words.contains('|');
         let other_depth = first.is_some_and(|f: usize| lines[f].depth != line.depth);
-        if (line.body.is_empty() || other_depth) && let Some(f) = first.take() {
+        if (line.body.is_empty() || other_depth)
+            && let Some(f) = first.take()
+        {
             found.push(block(lines, f, i));
         }
         if !line.body.is_empty() && !rule && first.is_none() {
@@ -84,7 +103,14 @@ pub(super) fn blocks(text: &str, lines: &[Line]) -> Vec<Block> {
 }
 
 fn block(lines: &[Line], first: usize, end: usize) -> Block {
-    Block { first, end, span: Span::new(lines[first].body.start, lines[end - 1].whole.end.max(lines[end - 1].body.end)) }
+    Block {
+        first,
+        end,
+        span: Span::new(
+            lines[first].body.start,
+            lines[end - 1].whole.end.max(lines[end - 1].body.end),
+        ),
+    }
 }
 
 #[cfg(test)]
@@ -97,8 +123,14 @@ mod tests {
         let found = lines(text);
         let bodies: Vec<&str> = found.iter().map(|l| l.body.of(text)).collect();
         assert_eq!(bodies, ["a", "b", "c", "", "d e", "f"]);
-        assert_eq!(found.iter().map(|l| l.depth).collect::<Vec<_>>(), [0, 0, 0, 0, 2, 1]);
+        assert_eq!(
+            found.iter().map(|l| l.depth).collect::<Vec<_>>(),
+            [0, 0, 0, 0, 2, 1]
+        );
         let groups = blocks(text, &found);
-        assert_eq!(groups.iter().map(|b| (b.first, b.end)).collect::<Vec<_>>(), [(0, 3), (4, 5), (5, 6)]);
+        assert_eq!(
+            groups.iter().map(|b| (b.first, b.end)).collect::<Vec<_>>(),
+            [(0, 3), (4, 5), (5, 6)]
+        );
     }
 }

@@ -30,7 +30,13 @@ impl Sheet {
     pub fn decode(name: String, bytes: &[u8]) -> Result<Sheet, SheetError> {
         let decoded = decode::decode(bytes)?;
         let lines = lines::lines(&decoded.text);
-        Ok(Sheet { name, text: decoded.text, lines, notes: decoded.notes, map: decoded.map })
+        Ok(Sheet {
+            name,
+            text: decoded.text,
+            lines,
+            notes: decoded.notes,
+            map: decoded.map,
+        })
     }
 
     /// The offsets on disk of the bytes that carry a span's words.
@@ -42,7 +48,10 @@ impl Sheet {
     pub fn line_column(&self, offset: usize) -> (usize, usize) {
         let i = self.line_at(offset);
         let start = self.lines.get(i).map_or(0, |l| l.whole.start);
-        let column = self.text.get(start..offset.min(self.text.len())).map_or(0, |s| s.chars().count());
+        let column = self
+            .text
+            .get(start..offset.min(self.text.len()))
+            .map_or(0, |s| s.chars().count());
         (i + 1, column + 1)
     }
 
@@ -53,12 +62,16 @@ impl Sheet {
 
     /// Index (from 0) of the line that holds an offset.
     pub fn line_at(&self, offset: usize) -> usize {
-        self.lines.partition_point(|l| l.whole.start <= offset).saturating_sub(1)
+        self.lines
+            .partition_point(|l| l.whole.start <= offset)
+            .saturating_sub(1)
     }
 
     /// The span of a line (numbered from 1) without its line end; empty where there is none.
     pub fn line_span(&self, line: usize) -> Span {
-        line.checked_sub(1).and_then(|i| self.lines.get(i)).map_or(Span::default(), |l| l.whole)
+        line.checked_sub(1)
+            .and_then(|i| self.lines.get(i))
+            .map_or(Span::default(), |l| l.whole)
     }
 
     /// The blocks: lines up to a blank line.
