@@ -181,7 +181,7 @@ sitez: {}
 #[test]
 fn broken_yaml_is_told_with_its_place() {
     for (text, word_line) in [
-        ("horizon: { lowest: 5\nweights: ]\n", 2),
+        ("horizon: { lowest: 5,\nweights: ]\n", 2),
         ("sites: foo\n", 1),
         ("horizon:\n\tlowest: 5\n", 2),
         ("horizon: { lowest: [ 5 ] }\n", 1),
