@@ -85,7 +85,22 @@ pub fn read(word: &str, axis: Axis) -> Result<Degrees, AngleError> {
     let marks_fit = body.split(is_number).map(str::trim).all(|mark| {
         matches!(
             mark,
-            "" | ":" | "°" | "º" | "d" | "deg" | "m" | "min" | "s" | "sec" | "'" | "′" | "’" | "\"" | "″" | "”" | "''"
+            "" | ":"
+                | "°"
+                | "º"
+                | "d"
+                | "deg"
+                | "m"
+                | "min"
+                | "s"
+                | "sec"
+                | "'"
+                | "′"
+                | "’"
+                | "\""
+                | "″"
+                | "”"
+                | "''"
         )
     });
     if !marks_fit || numbers.is_empty() || numbers.len() > 3 {
