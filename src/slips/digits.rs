@@ -11,6 +11,8 @@ pub struct Changed {
     pub part: usize,
     /// Value of the changed digit's place in the part: 1 for its units, 10 for its tens, 0.1 for the first decimal.
     pub place: f64,
+    /// By how much the digit changed; 0 for exchanged ones.
+    pub off_by: u64,
     /// A digit was put in front that may have been lost.
     pub lost: bool,
 }
@@ -34,6 +36,7 @@ pub fn exchanged(angle: &Angle) -> impl Iterator<Item = Changed> + use<> {
                 angle: changed,
                 part,
                 place: 10f64.powi(k as i32 + 1 - i32::from(number.places)),
+                off_by: 0,
                 lost: false,
             });
         }
@@ -58,6 +61,7 @@ pub fn miskeyed(angle: &Angle) -> impl Iterator<Item = Changed> + use<> {
                     angle: changed,
                     part,
                     place: 10f64.powi(k as i32 - i32::from(number.places)),
+                    off_by: old.abs_diff(new),
                     lost: false,
                 });
             }
@@ -72,6 +76,7 @@ pub fn miskeyed(angle: &Angle) -> impl Iterator<Item = Changed> + use<> {
                     angle: changed,
                     part,
                     place: 10f64.powi(i32::from(number.whole_digits)),
+                    off_by: new,
                     lost: true,
                 });
             }
