@@ -1,9 +1,110 @@
 //! A report brought to the wanted equinox, with its step: from as written to as meant.
+//!
+//! Not here: what the reader is for (words), and what rules are for (judging). What cannot be had is `None`; why is told
+//! by the rules.
 
-use crate::house::House;
-use crate::report::{Frame, Meant, Report};
+pub mod frame;
+pub mod horizon;
+pub mod instant;
+pub mod position;
+pub mod print;
+pub mod site;
+pub mod target;
+pub mod to;
+
+pub use print::printed;
+pub use target::parse_target;
+
+use crate::house::{House, WhenMissing};
+use crate::report::{Frame, Meant, ReadPosition, Report};
+use crate::sky::moment::{Moment, Station};
+use crate::sky::{Direction, constellations};
+use std::cell::OnceCell;
 
 /// What a report means under the house rules, restated in the frame `to`. Never fails: what cannot be had is `None`.
-pub fn mean(_report: &Report, _house: &House, _to: Frame) -> Meant {
-    todo!()
+pub fn mean(report: &Report, house: &House, to: Frame) -> Meant {
+    let mut meant = Meant::default();
+    (meant.site, meant.site_trouble, meant.site_register_deg) = site::resolve(report, house);
+    (meant.instant, meant.instant_trouble) = instant::resolve(report, house, meant.site.as_ref());
+    let Some(numbers) = position::numbers(&report.position) else {
+        return meant;
+    };
+    let mut understood = frame::understand(report.position.kind, &report.equinoxes);
+    if understood.frame.is_none() {
+        if let WhenMissing::Assume(frame) = house.when_missing {
+            understood.frame = Some(frame);
+            meant.assumed.push(format!("equinox {}", frame.equinox));
+        }
+    }
+    let read = ReadPosition {
+        frame: understood.frame,
+        ..numbers
+    };
+    meant.read = Some(read);
+
+    let sky = Sky::new(&meant);
+    let written = to::Written {
+        read,
+        from_origin: understood.from_origin,
+        airless: report.position.airless,
+        epoch: report.epoch_of_place.map(|e| e.value.value()),
+    };
+    meant.reduced = to::reduce(&written, to, &sky);
+    if let Some(reduced) = meant.reduced {
+        let icrs = Direction::new(reduced.icrs_ra_deg, reduced.icrs_dec_deg);
+        meant.constellation = Some(constellations::at(icrs));
+        meant.horizon = sky.station().map(|station| horizon::over(icrs, station));
+    }
+    meant
+}
+
+/// The instant and the site of a report as the sky needs them, each computed when first asked for, and once.
+pub struct Sky {
+    /// UTC of the observation, however doubtful its hour.
+    utc: Option<(f64, f64)>,
+    /// Nothing is doubtful about the instant and the site.
+    sure: bool,
+    ground: Option<crate::sky::Ground>,
+    moment: OnceCell<Moment>,
+    station: OnceCell<Station>,
+}
+
+impl Sky {
+    /// Of a report whose instant and site are resolved.
+    pub fn new(meant: &Meant) -> Sky {
+        Sky {
+            utc: meant
+                .instant
+                .map(|i| i.utc)
+                .filter(|&utc| Moment::is_computable(utc)),
+            sure: meant.instant_trouble.is_none() && meant.site_trouble.is_none(),
+            ground: meant.site.as_ref().map(|s| crate::sky::Ground {
+                latitude_deg: s.latitude_deg,
+                longitude_deg: s.longitude_deg,
+                elevation_m: s.elevation_m.unwrap_or(0.0),
+            }),
+            moment: OnceCell::new(),
+            station: OnceCell::new(),
+        }
+    }
+
+    /// The date of observation, TT, if there is one.
+    pub fn tt(&self) -> Option<(f64, f64)> {
+        self.utc.map(crate::sky::time::tt_from_utc)
+    }
+
+    /// The instant, if there is one.
+    pub fn moment(&self) -> Option<&Moment> {
+        let utc = self.utc?;
+        Some(self.moment.get_or_init(|| Moment::new(utc)))
+    }
+
+    /// The instant at the site, if there are both and nothing is doubtful about them.
+    pub fn station(&self) -> Option<&Station> {
+        let (true, Some(ground)) = (self.sure, self.ground) else {
+            return None;
+        };
+        let moment = self.moment()?;
+        Some(self.station.get_or_init(|| moment.station(ground)))
+    }
 }

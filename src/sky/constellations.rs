@@ -1,13 +1,196 @@
 //! Constellations by the IAU's boundaries of 1875.
+//!
+//! Roman 1987 (PASP 99, 695; CDS VI/42) after Delporte 1930, from the exact integer forms of the table (seconds of time
+//! and of arc). The table, searched from the north, becomes cells of a few bands of declination: one constellation each.
 
-use super::Direction;
+use super::{Direction, fk4, fk5, rotate};
+use std::sync::LazyLock;
 
-/// The IAU abbreviation (`Tau`) of the constellation that holds an ICRS direction.
-pub fn at(_icrs: Direction) -> &'static str {
-    todo!()
+/// One row of the table.
+#[derive(Clone, Copy, Debug)]
+struct Row {
+    from_s: i32,
+    to_s: i32,
+    above_arcsec: i32,
+    abbreviation: &'static str,
 }
 
-/// How far a direction is from the nearest boundary of the named constellation, degrees; 0 inside. For wording only: to 0.1°.
-pub fn distance_deg(_icrs: Direction, _abbreviation: &str) -> f64 {
-    todo!()
+/// A band of declination: from its lower edge up to the next band's.
+struct Band {
+    above_arcsec: i32,
+    to_arcsec: i32,
+    /// Right ascension (seconds of time) from which each constellation holds.
+    cells: Vec<(i32, &'static str)>,
+}
+
+/// Every abbreviation, as IAU writes it, with the nominative and the genitive.
+pub static NAMES: LazyLock<Vec<[&'static str; 3]>> = LazyLock::new(|| {
+    include_str!("data/constellation_names.csv")
+        .lines()
+        .skip(1)
+        .filter_map(|line| {
+            let mut parts = line.split(',').map(str::trim);
+            Some([parts.next()?, parts.next()?, parts.next()?])
+        })
+        .collect()
+});
+
+static ROWS: LazyLock<Vec<Row>> = LazyLock::new(|| {
+    include_str!("data/constellation_bounds_b1875.csv")
+        .lines()
+        .skip(1)
+        .filter_map(|line| {
+            let part: Vec<&'static str> = line.split(',').map(str::trim).collect();
+            Some(Row {
+                from_s: part.get(5)?.parse().ok()?,
+                to_s: part.get(6)?.parse().ok()?,
+                above_arcsec: part.get(7)?.parse().ok()?,
+                abbreviation: part.get(4)?,
+            })
+        })
+        .collect()
+});
+
+static BANDS: LazyLock<Vec<Band>> = LazyLock::new(|| {
+    let mut edges: Vec<i32> = ROWS.iter().map(|r| r.above_arcsec).collect();
+    edges.push(-90 * 3600);
+    edges.sort_unstable();
+    edges.dedup();
+    let upper = edges.iter().skip(1).copied().chain([90 * 3600]);
+    edges
+        .iter()
+        .zip(upper)
+        .map(|(&above_arcsec, to_arcsec)| {
+            let rows: Vec<&Row> = ROWS
+                .iter()
+                .filter(|r| r.above_arcsec <= above_arcsec)
+                .collect();
+            let mut starts: Vec<i32> = rows
+                .iter()
+                .flat_map(|r| [r.from_s, r.to_s])
+                .chain([0])
+                .collect();
+            starts.sort_unstable();
+            starts.dedup();
+            let mut cells: Vec<(i32, &'static str)> = Vec::new();
+            for start in starts.into_iter().filter(|&s| s < 86_400) {
+                let first = rows.iter().find(|r| r.from_s <= start && start < r.to_s);
+                let name = first.map_or("Oct", |r| r.abbreviation);
+                if cells.last().is_none_or(|c| c.1 != name) {
+                    cells.push((start, name));
+                }
+            }
+            Band {
+                above_arcsec,
+                to_arcsec,
+                cells,
+            }
+        })
+        .collect()
+});
+
+/// ICRS to the mean equator and equinox of B1875.0 without E-terms: to FK5 and FK4 as at B1950.0, Newcomb's precession.
+static TO_B1875: LazyLock<[[f64; 3]; 3]> = LazyLock::new(|| {
+    let b1950 = super::time::jd_of_besselian_epoch(1950.0);
+    let image = |icrs: Direction| {
+        let j2000 = fk5::from_icrs(icrs, 2000.0, b1950);
+        let place = super::fk4_fk5::from_fk5(j2000, 1950.0, 1950.0);
+        fk4::bare_from_b1950(place, 1875.0).vector()
+    };
+    // the images of two axes, made square, and their cross product
+    let x = image(Direction::new(0.0, 0.0));
+    let y = image(Direction::new(90.0, 0.0));
+    let lean: f64 = (0..3).map(|i| x[i] * y[i]).sum();
+    let x: [f64; 3] = std::array::from_fn(|i| x[i] - lean / 2.0 * y[i]);
+    let y: [f64; 3] = std::array::from_fn(|i| y[i] - lean / 2.0 * x[i]);
+    let z = [
+        x[1] * y[2] - x[2] * y[1],
+        x[2] * y[0] - x[0] * y[2],
+        x[0] * y[1] - x[1] * y[0],
+    ];
+    std::array::from_fn(|i| [x[i], y[i], z[i]])
+});
+
+/// An ICRS direction on the mean equator and equinox of B1875.0, in which the boundaries are drawn.
+pub fn at_1875(icrs: Direction) -> Direction {
+    Direction::of_vector(rotate(&TO_B1875, icrs.vector()))
+}
+
+/// The IAU abbreviation (`Tau`) of the constellation that holds an ICRS direction.
+pub fn at(icrs: Direction) -> &'static str {
+    let place = at_1875(icrs);
+    at_b1875(place.ra_deg * 240.0, place.dec_deg * 3600.0)
+}
+
+/// The constellation of a B1875.0 place: right ascension in seconds of time [0, 86400), declination in arcsec. A place on
+/// a boundary belongs to the side east or north of it.
+pub fn at_b1875(ra_s: f64, dec_arcsec: f64) -> &'static str {
+    let band = BANDS.partition_point(|b| f64::from(b.above_arcsec) <= dec_arcsec);
+    let Some(band) = BANDS.get(band.saturating_sub(1)) else {
+        return "Oct";
+    };
+    let cell = band.cells.partition_point(|c| f64::from(c.0) <= ra_s);
+    band.cells
+        .get(cell.saturating_sub(1))
+        .map_or("Oct", |c| c.1)
+}
+
+/// How far a direction is from the nearest boundary of the named constellation, degrees; 0 inside; 180 for no such name.
+pub fn distance_deg(icrs: Direction, abbreviation: &str) -> f64 {
+    let place = at_1875(icrs);
+    let mut nearest: f64 = 180.0;
+    for band in BANDS.iter() {
+        for (i, &(from_s, name)) in band.cells.iter().enumerate() {
+            if name.eq_ignore_ascii_case(abbreviation) {
+                let to_s = band.cells.get(i + 1).map_or(86_400, |c| c.0);
+                nearest = nearest.min(to_cell(place, band, from_s, to_s));
+            }
+        }
+    }
+    nearest
+}
+
+/// Distance of a B1875.0 place to a cell: along the meridian where it stands over or under it, else to an edge in RA.
+fn to_cell(place: Direction, band: &Band, from_s: i32, to_s: i32) -> f64 {
+    let (low, high) = (
+        f64::from(band.above_arcsec) / 3600.0,
+        f64::from(band.to_arcsec) / 3600.0,
+    );
+    let (from, to) = (f64::from(from_s) / 240.0, f64::from(to_s) / 240.0);
+    if (from..to).contains(&place.ra_deg) {
+        return (low - place.dec_deg).max(place.dec_deg - high).max(0.0);
+    }
+    let (sin, cos) = place.dec_deg.to_radians().sin_cos();
+    [from, to]
+        .into_iter()
+        .map(|edge| {
+            let across = (place.ra_deg - edge).to_radians().cos();
+            // the declination at which the meridian comes nearest
+            let foot = sin.atan2(cos * across).to_degrees();
+            let dec = if foot.abs() <= 90.0 {
+                foot
+            } else {
+                90f64.copysign(foot)
+            };
+            super::separation_deg(place, Direction::new(edge, dec.clamp(low, high)))
+        })
+        .fold(180.0, f64::min)
+}
+
+/// Every corner of the table in B1875.0, (seconds of time, arcsec): for tests.
+pub fn corners() -> Vec<(i32, i32)> {
+    ROWS.iter()
+        .flat_map(|r| [(r.from_s, r.above_arcsec), (r.to_s, r.above_arcsec)])
+        .collect()
+}
+
+/// What the table's own search finds, row by row from the first: for tests of the cells.
+pub fn by_rows(ra_s: f64, dec_arcsec: f64) -> Option<&'static str> {
+    ROWS.iter()
+        .find(|r| {
+            f64::from(r.above_arcsec) <= dec_arcsec
+                && f64::from(r.from_s) <= ra_s
+                && ra_s < f64::from(r.to_s)
+        })
+        .map(|r| r.abbreviation)
 }
