@@ -1,7 +1,21 @@
 //! House rules and the site register: what the section's `colure.yaml` says.
 
+pub mod angle;
+pub mod frame;
+mod load;
+mod mistake;
+pub mod objects;
+mod register;
+
+pub use load::{LONGEST_BYTES, absolute, load, nearest_house, object_lists, parse};
+pub use mistake::{HouseError, Mistake, nearest};
+pub use register::plain;
+
 use crate::report::{Equinox, Frame, System, Weight};
 use std::collections::BTreeMap;
+
+/// The name of a house file.
+pub const FILE_NAME: &str = "colure.yaml";
 
 /// What to do with a position that has no equinox.
 #[derive(Clone, Copy, PartialEq, Debug)]
@@ -76,6 +90,8 @@ pub struct House {
     pub observers: Vec<Observer>,
     /// The user's own objects.
     pub known_objects: Vec<KnownObject>,
+    /// The files they come from, absolute: no sheets, though they may lie among them.
+    pub object_lists: Vec<std::path::PathBuf>,
 }
 
 impl Default for House {
@@ -93,6 +109,7 @@ impl Default for House {
             sites: Vec::new(),
             observers: Vec::new(),
             known_objects: Vec::new(),
+            object_lists: Vec::new(),
         }
     }
 }

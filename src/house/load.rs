@@ -1,0 +1,854 @@
+//! A house file read: `colure.yaml`, every key and value checked, every mistake at its own words.
+//!
+//! serde_yaml tells no places on success, but it lends plain and quoted words out of the text itself, so that a word's
+//! place is the difference of two addresses. Mistakes are gathered and told together; only broken YAML, or a list where
+//! a mapping belongs, ends the reading at once.
+
+use super::angle::{self, Axis};
+use super::frame::{self, frame_named};
+use super::mistake::{HouseError, Mistake, nearest};
+use super::{House, Observer, RegisteredSite, WhenMissing, objects};
+use crate::report::Weight;
+use crate::span::Span;
+use serde::de::{self, DeserializeSeed, IgnoredAny, MapAccess, SeqAccess, Visitor};
+use std::borrow::Cow;
+use std::fmt;
+use std::path::{Path, PathBuf};
+
+/// A longer file is not read: its aliases could unfold to more than the memory holds.
+pub const LONGEST_BYTES: usize = 64 * 1024;
+/// More words than this come only of aliases unfolding.
+const MOST_WORDS: usize = 100_000;
+
+/// Reads a house file and the object lists it names. `rules` are the names that `weights` may hold.
+pub fn load(path: &Path, rules: &[&str]) -> Result<House, HouseError> {
+    let whole = |what: String, expected: &str| HouseError::whole(path.to_owned(), what, expected);
+    let size = std::fs::metadata(path).map_err(|e| {
+        whole(
+            format!("cannot be read: {e}"),
+            "name an existing house file with --house, or leave the option out",
+        )
+    })?;
+    if size.is_dir() {
+        return Err(whole(
+            "is a folder".to_owned(),
+            "name the house file in it, usually colure.yaml",
+        ));
+    }
+    if size.len() > LONGEST_BYTES as u64 {
+        return Err(whole(
+            format!("is {} KiB long", size.len() / 1024),
+            "house rules are at most 64 KiB: put long lists of objects into CSV files and name them under known-objects",
+        ));
+    }
+    let bytes = std::fs::read(path)
+        .map_err(|e| whole(format!("cannot be read: {e}"), "check its permissions"))?;
+    let text = String::from_utf8(bytes).map_err(|e| {
+        let at = e.utf8_error().valid_up_to();
+        let line = e.as_bytes()[..at].iter().filter(|b| **b == b'\n').count() + 1;
+        whole(
+            format!("is not UTF-8 text: the first byte that is not stands in line {line}"),
+            "save it as UTF-8",
+        )
+    })?;
+    // a byte order mark would shift every place by three
+    let text = text
+        .strip_prefix('\u{feff}')
+        .map_or(text.clone(), str::to_owned);
+    let folder = path.parent().unwrap_or(Path::new(""));
+    let (mut house, mut mistakes, lists) = parse(&text, rules);
+    for (list, span) in lists {
+        house.object_lists.extend(absolute(&folder.join(&list)));
+        match objects::load(&folder.join(&list)) {
+            Ok(mut objects) => house.known_objects.append(&mut objects),
+            Err(problem) => mistakes.push(Mistake {
+                span,
+                what: format!("known-objects: {list}: {}", problem.what),
+                expected: problem.expected,
+            }),
+        }
+    }
+    if mistakes.is_empty() {
+        Ok(house)
+    } else {
+        mistakes.sort_by_key(|m| m.span.map_or(0, |s| s.start));
+        Err(HouseError {
+            path: path.to_owned(),
+            text,
+            mistakes,
+        })
+    }
+}
+
+/// The object lists a house file names, absolute paths; none where it cannot be read.
+pub fn object_lists(path: &Path) -> Vec<PathBuf> {
+    let text = std::fs::read_to_string(path).unwrap_or_default();
+    if text.len() > LONGEST_BYTES {
+        return Vec::new();
+    }
+    let folder = path.parent().unwrap_or(Path::new(""));
+    let (_, _, lists) = parse(&text, &[]);
+    lists
+        .iter()
+        .filter_map(|(list, _)| absolute(&folder.join(list)))
+        .collect()
+}
+
+/// An absolute path without `.` and `..`, without asking the disk.
+pub fn absolute(path: &Path) -> Option<PathBuf> {
+    let mut plain = PathBuf::new();
+    for part in std::path::absolute(path).ok()?.components() {
+        match part {
+            std::path::Component::ParentDir => {
+                plain.pop();
+            }
+            other => plain.push(other),
+        }
+    }
+    Some(plain)
+}
+
+/// The nearest `colure.yaml` in a folder or above it.
+pub fn nearest_house(folder: &Path) -> Option<PathBuf> {
+    let start = std::path::absolute(folder).ok()?;
+    start
+        .ancestors()
+        .map(|dir| dir.join(super::FILE_NAME))
+        .find(|file| file.is_file())
+}
+
+/// An object list named by the house, and where it is named.
+type Lists = Vec<(String, Option<Span>)>;
+
+/// The house a text describes, its mistakes, and the object lists it names.
+pub fn parse(text: &str, rules: &[&str]) -> (House, Vec<Mistake>, Lists) {
+    let mut reading = Reading {
+        base: text.as_ptr() as usize,
+        length: text.len(),
+        rules,
+        words: 0,
+        mistakes: Vec::new(),
+        lists: Vec::new(),
+    };
+    let mut draft = Draft::default();
+    let only_comments = text
+        .lines()
+        .all(|l| l.trim().is_empty() || l.trim_start().starts_with('#') || l.trim() == "---");
+    if !only_comments {
+        let seed = Entries {
+            section: &mut draft,
+            reading: &mut reading,
+        };
+        if let Err(error) = seed.deserialize(serde_yaml::Deserializer::from_str(text)) {
+            reading.mistakes.push(yaml_mistake(&error, text));
+        }
+    }
+    draft.check(&mut reading);
+    (draft.house, reading.mistakes, reading.lists)
+}
+
+/// serde_yaml's own error as a mistake. It counts lines and columns from 1; 1:1 may mean that it does not know.
+fn yaml_mistake(error: &serde_yaml::Error, text: &str) -> Mistake {
+    let span = error
+        .location()
+        .filter(|l| (l.line(), l.column()) != (1, 1))
+        .map(|l| {
+            let start = text
+                .split_inclusive('\n')
+                .take(l.line().saturating_sub(1))
+                .map(str::len)
+                .sum::<usize>();
+            let line = text[start..].lines().next().unwrap_or("");
+            let column = line
+                .chars()
+                .take(l.column().saturating_sub(1))
+                .map(char::len_utf8);
+            let from = column.sum::<usize>();
+            let word = line[from..]
+                .split(|c: char| c.is_whitespace() || ",}]".contains(c))
+                .next()
+                .unwrap_or("");
+            Span::new(start + from, start + from + word.len())
+        });
+    let full = error.to_string();
+    let what = match full.find(" at line ") {
+        Some(end) => full[..end].to_owned(),
+        None => full,
+    };
+    Mistake {
+        span,
+        what: format!("this is not the YAML of house rules: {what}"),
+        expected: "check indentation, colons and brackets, and quote text that holds “: ” or “#”"
+            .to_owned(),
+    }
+}
+
+// ---------------------------------------------------------------------------------------------- words and sections
+
+/// What goes along with the reading.
+struct Reading<'r> {
+    base: usize,
+    length: usize,
+    rules: &'r [&'r str],
+    words: usize,
+    mistakes: Vec<Mistake>,
+    lists: Lists,
+}
+
+impl Reading<'_> {
+    fn mistake(&mut self, at: &Word, what: impl Into<String>, expected: impl Into<String>) {
+        let span = at.span(self);
+        self.mistakes.push(Mistake {
+            span,
+            what: what.into(),
+            expected: expected.into(),
+        });
+    }
+
+    /// A key that is none of those expected.
+    fn unknown(&mut self, key: &Word, place: &str, right: &[&str]) {
+        let offered = match nearest(key.text(), right.iter().copied()) {
+            Some(near) => format!("did you mean `{near}`? "),
+            None => String::new(),
+        };
+        let expected = format!("{offered}{place} may hold: {}", right.join(", "));
+        self.mistake(
+            key,
+            format!("unknown key `{}` in {place}", key.text()),
+            expected,
+        );
+    }
+
+    fn number(&mut self, word: &Word, what: &str, low: f64, high: f64) -> Option<f64> {
+        let body = word.text().trim().trim_end_matches(['°']).trim_end();
+        let body = body
+            .strip_suffix("deg")
+            .unwrap_or(body)
+            .trim_end()
+            .replace('−', "-");
+        let digits = body.trim_start_matches(['+', '-']);
+        let well_formed = digits.starts_with(|c: char| c.is_ascii_digit())
+            && digits.len() <= 20
+            && digits.chars().all(|c| c.is_ascii_digit() || c == '.');
+        match body.parse::<f64>() {
+            Ok(value) if well_formed && (low..=high).contains(&value) => Some(value),
+            _ => {
+                self.mistake(
+                    word,
+                    format!("`{}` is no {what}", word.text()),
+                    format!("expected a number from {low} to {high}"),
+                );
+                None
+            }
+        }
+    }
+}
+
+/// A scalar as written; lent by the text wherever the YAML reader can.
+#[derive(Clone, Debug)]
+struct Word<'de>(Cow<'de, str>);
+
+impl Word<'_> {
+    fn text(&self) -> &str {
+        &self.0
+    }
+
+    fn span(&self, reading: &Reading) -> Option<Span> {
+        let Cow::Borrowed(text) = self.0 else {
+            return None;
+        };
+        let start = (text.as_ptr() as usize).checked_sub(reading.base)?;
+        (start + text.len() <= reading.length).then(|| Span::new(start, start + text.len()))
+    }
+}
+
+struct WordSeed<'a, 'r>(&'a mut Reading<'r>);
+
+impl<'de> DeserializeSeed<'de> for WordSeed<'_, '_> {
+    type Value = Word<'de>;
+
+    fn deserialize<D: de::Deserializer<'de>>(self, d: D) -> Result<Word<'de>, D::Error> {
+        self.0.words += 1;
+        if self.0.words > MOST_WORDS {
+            return Err(de::Error::custom("its aliases unfold to too many words"));
+        }
+        d.deserialize_str(WordVisitor)
+    }
+}
+
+struct WordVisitor;
+
+impl<'de> Visitor<'de> for WordVisitor {
+    type Value = Word<'de>;
+
+    fn expecting(&self, f: &mut fmt::Formatter) -> fmt::Result {
+        f.write_str("a single word or number")
+    }
+
+    fn visit_borrowed_str<E: de::Error>(self, text: &'de str) -> Result<Word<'de>, E> {
+        Ok(Word(Cow::Borrowed(text)))
+    }
+
+    fn visit_str<E: de::Error>(self, text: &str) -> Result<Word<'de>, E> {
+        Ok(Word(Cow::Owned(text.to_owned())))
+    }
+}
+
+/// One word, or a list of them.
+struct WordsSeed<'a, 'r>(&'a mut Reading<'r>);
+
+impl<'de> DeserializeSeed<'de> for WordsSeed<'_, '_> {
+    type Value = Vec<Word<'de>>;
+
+    fn deserialize<D: de::Deserializer<'de>>(self, d: D) -> Result<Vec<Word<'de>>, D::Error> {
+        d.deserialize_seq(self)
+    }
+}
+
+impl<'de> Visitor<'de> for WordsSeed<'_, '_> {
+    type Value = Vec<Word<'de>>;
+
+    fn expecting(&self, f: &mut fmt::Formatter) -> fmt::Result {
+        f.write_str("a list: [ one, two ]")
+    }
+
+    fn visit_seq<A: SeqAccess<'de>>(self, mut seq: A) -> Result<Vec<Word<'de>>, A::Error> {
+        let mut words = Vec::new();
+        while let Some(word) = seq.next_element_seed(WordSeed(self.0))? {
+            words.push(word);
+        }
+        Ok(words)
+    }
+
+    // `known-objects:` with nothing after it
+    fn visit_unit<E: de::Error>(self) -> Result<Vec<Word<'de>>, E> {
+        Ok(Vec::new())
+    }
+}
+
+/// A mapping of the house file: it says which keys it holds and takes their values.
+trait Section<'de> {
+    /// Its name in messages.
+    fn place(&self) -> String;
+
+    /// Takes the value of one key.
+    fn entry<A: MapAccess<'de>>(
+        &mut self,
+        key: &Word<'de>,
+        map: &mut A,
+        reading: &mut Reading,
+    ) -> Result<(), A::Error>;
+}
+
+struct Entries<'a, 'r, S> {
+    section: &'a mut S,
+    reading: &'a mut Reading<'r>,
+}
+
+impl<'de, S: Section<'de>> DeserializeSeed<'de> for Entries<'_, '_, S> {
+    type Value = ();
+
+    fn deserialize<D: de::Deserializer<'de>>(self, d: D) -> Result<(), D::Error> {
+        d.deserialize_map(self)
+    }
+}
+
+impl<'de, S: Section<'de>> Visitor<'de> for Entries<'_, '_, S> {
+    type Value = ();
+
+    fn expecting(&self, f: &mut fmt::Formatter) -> fmt::Result {
+        write!(f, "{} as `key: value` pairs", self.section.place())
+    }
+
+    fn visit_map<A: MapAccess<'de>>(self, mut map: A) -> Result<(), A::Error> {
+        let mut seen: Vec<String> = Vec::new();
+        while let Some(key) = map.next_key_seed(WordSeed(self.reading))? {
+            if seen.iter().any(|s| s == key.text()) {
+                let place = self.section.place();
+                self.reading.mistake(
+                    &key,
+                    format!("`{}` stands twice in {place}", key.text()),
+                    "keep one of the two",
+                );
+                map.next_value::<IgnoredAny>()?;
+                continue;
+            }
+            self.section.entry(&key, &mut map, self.reading)?;
+            seen.push(key.text().to_owned());
+        }
+        Ok(())
+    }
+
+    // `sites:` with nothing after it
+    fn visit_unit<E: de::Error>(self) -> Result<(), E> {
+        Ok(())
+    }
+}
+
+fn word<'de, A: MapAccess<'de>>(map: &mut A, reading: &mut Reading) -> Result<Word<'de>, A::Error> {
+    map.next_value_seed(WordSeed(reading))
+}
+
+fn section<'de, A: MapAccess<'de>, S: Section<'de>>(
+    map: &mut A,
+    section: &mut S,
+    reading: &mut Reading,
+) -> Result<(), A::Error> {
+    map.next_value_seed(Entries { section, reading })
+}
+
+// ---------------------------------------------------------------------------------------------- the sections
+
+/// The whole file.
+#[derive(Default)]
+struct Draft<'de> {
+    house: House,
+    /// Sites that observers name, checked once all sites are known.
+    observer_sites: Vec<Word<'de>>,
+}
+
+impl<'de> Draft<'de> {
+    fn check(&mut self, reading: &mut Reading) {
+        for site in &self.observer_sites {
+            if self.house.site(site.text()).is_none() {
+                let names: Vec<&str> = self.house.sites.iter().map(|s| s.name.as_str()).collect();
+                let near = self.house.nearest_sites(site.text());
+                let expected = match near.first() {
+                    Some(near) => format!("did you mean `{near}`?"),
+                    None if names.is_empty() => "add it under sites".to_owned(),
+                    None => format!("the register has: {}", names.join(", ")),
+                };
+                reading.mistake(
+                    site,
+                    format!("the register has no site `{}`", site.text()),
+                    expected,
+                );
+            }
+        }
+    }
+}
+
+const TOP_KEYS: &[&str] = &[
+    "equinox",
+    "horizon",
+    "weights",
+    "sites",
+    "observers",
+    "known-objects",
+];
+
+impl<'de> Section<'de> for Draft<'de> {
+    fn place(&self) -> String {
+        "house rules".to_owned()
+    }
+
+    fn entry<A: MapAccess<'de>>(
+        &mut self,
+        key: &Word<'de>,
+        map: &mut A,
+        reading: &mut Reading,
+    ) -> Result<(), A::Error> {
+        match key.text() {
+            "equinox" => section(map, &mut EquinoxSection(&mut self.house), reading),
+            "horizon" => section(map, &mut HorizonSection(&mut self.house), reading),
+            "weights" => section(map, &mut WeightsSection(&mut self.house), reading),
+            "sites" => section(map, &mut SitesSection(&mut self.house), reading),
+            "observers" => section(map, &mut ObserversSection(self), reading),
+            "known-objects" => {
+                for list in map.next_value_seed(WordsSeed(reading))? {
+                    let span = list.span(reading);
+                    reading.lists.push((list.text().to_owned(), span));
+                }
+                Ok(())
+            }
+            _ => {
+                reading.unknown(key, "house rules", TOP_KEYS);
+                map.next_value::<IgnoredAny>().map(drop)
+            }
+        }
+    }
+}
+
+struct EquinoxSection<'a>(&'a mut House);
+
+impl<'de> Section<'de> for EquinoxSection<'_> {
+    fn place(&self) -> String {
+        "equinox".to_owned()
+    }
+
+    fn entry<A: MapAccess<'de>>(
+        &mut self,
+        key: &Word<'de>,
+        map: &mut A,
+        reading: &mut Reading,
+    ) -> Result<(), A::Error> {
+        match key.text() {
+            "canonical" => {
+                let value = word(map, reading)?;
+                match frame_named(value.text()) {
+                    Ok(frame) => self.0.canonical = frame,
+                    Err(what) => reading.mistake(&value, what, frame::EXPECTED),
+                }
+            }
+            "when-missing" => {
+                let value = word(map, reading)?;
+                if value.text() == "query" {
+                    self.0.when_missing = WhenMissing::Query;
+                } else {
+                    match frame_named(value.text()) {
+                        Ok(frame) => self.0.when_missing = WhenMissing::Assume(frame),
+                        Err(what) => reading.mistake(
+                            &value,
+                            what,
+                            "expected `query`, or the equinox to assume: J2000.0, B1950.0 …",
+                        ),
+                    }
+                }
+            }
+            _ => {
+                reading.unknown(key, "equinox", &["canonical", "when-missing"]);
+                map.next_value::<IgnoredAny>()?;
+            }
+        }
+        Ok(())
+    }
+}
+
+struct HorizonSection<'a>(&'a mut House);
+
+impl<'de> Section<'de> for HorizonSection<'_> {
+    fn place(&self) -> String {
+        "horizon".to_owned()
+    }
+
+    fn entry<A: MapAccess<'de>>(
+        &mut self,
+        key: &Word<'de>,
+        map: &mut A,
+        reading: &mut Reading,
+    ) -> Result<(), A::Error> {
+        match key.text() {
+            "lowest" => {
+                let value = word(map, reading)?;
+                if let Some(x) = reading.number(&value, "altitude in degrees", -5.0, 90.0) {
+                    self.0.lowest_altitude_deg = x;
+                }
+            }
+            "darkness" => {
+                let value = word(map, reading)?;
+                if let Some(x) =
+                    reading.number(&value, "altitude of the Sun in degrees", -90.0, 90.0)
+                {
+                    self.0.darkness_deg = x;
+                }
+            }
+            "daylight-magnitude" => {
+                let value = word(map, reading)?;
+                if let Some(x) = reading.number(&value, "magnitude", -30.0, 30.0) {
+                    self.0.daylight_magnitude = Some(x);
+                }
+            }
+            _ => {
+                reading.unknown(
+                    key,
+                    "horizon",
+                    &["lowest", "darkness", "daylight-magnitude"],
+                );
+                map.next_value::<IgnoredAny>()?;
+            }
+        }
+        Ok(())
+    }
+}
+
+struct WeightsSection<'a>(&'a mut House);
+
+impl<'de> Section<'de> for WeightsSection<'_> {
+    fn place(&self) -> String {
+        "weights".to_owned()
+    }
+
+    fn entry<A: MapAccess<'de>>(
+        &mut self,
+        key: &Word<'de>,
+        map: &mut A,
+        reading: &mut Reading,
+    ) -> Result<(), A::Error> {
+        let value = word(map, reading)?;
+        let rule = key.text();
+        if !reading.rules.contains(&rule) {
+            let expected = match nearest(rule, reading.rules.iter().copied()) {
+                Some(near) => format!("did you mean `{near}`? `colure rulebook` lists them all"),
+                None => "`colure rulebook` lists the rules".to_owned(),
+            };
+            reading.mistake(key, format!("there is no rule `{rule}`"), expected);
+            return Ok(());
+        }
+        let weight = match value.text() {
+            "note" => Some(Weight::Note),
+            "query" => Some(Weight::Query),
+            "reject" => Some(Weight::Reject),
+            "off" => None,
+            other => {
+                let near = nearest(other, ["note", "query", "reject", "off"])
+                    .map_or(String::new(), |near| format!("did you mean `{near}`? "));
+                reading.mistake(
+                    &value,
+                    format!("`{other}` is no weight"),
+                    format!("{near}expected note, query, reject or off"),
+                );
+                return Ok(());
+            }
+        };
+        self.0.weights.insert(rule.to_owned(), weight);
+        Ok(())
+    }
+}
+
+struct SitesSection<'a>(&'a mut House);
+
+impl<'de> Section<'de> for SitesSection<'_> {
+    fn place(&self) -> String {
+        "sites".to_owned()
+    }
+
+    fn entry<A: MapAccess<'de>>(
+        &mut self,
+        key: &Word<'de>,
+        map: &mut A,
+        reading: &mut Reading,
+    ) -> Result<(), A::Error> {
+        let mut site = SiteSection::new(key.text());
+        let before = reading.mistakes.len();
+        section(map, &mut site, reading)?;
+        match (site.latitude, site.longitude) {
+            (Some(latitude), Some(longitude)) => self.0.sites.push(RegisteredSite {
+                latitude_deg: latitude.value,
+                longitude_deg: longitude.value,
+                step_deg: latitude.step.max(longitude.step),
+                ..site.site
+            }),
+            // its own coordinates are already complained of
+            _ if reading.mistakes.len() > before => {}
+            _ => reading.mistake(
+                key,
+                format!("the site `{}` needs latitude and longitude", key.text()),
+                "write { latitude: 54°18.6′ N, longitude: 3°01′ W, elevation: 240 m, zone: Europe/London }",
+            ),
+        }
+        Ok(())
+    }
+}
+
+struct SiteSection {
+    site: RegisteredSite,
+    latitude: Option<angle::Degrees>,
+    longitude: Option<angle::Degrees>,
+}
+
+impl SiteSection {
+    fn new(name: &str) -> SiteSection {
+        SiteSection {
+            site: RegisteredSite {
+                name: name.to_owned(),
+                aliases: Vec::new(),
+                latitude_deg: 0.0,
+                longitude_deg: 0.0,
+                step_deg: 0.0,
+                elevation_m: None,
+                zone: None,
+            },
+            latitude: None,
+            longitude: None,
+        }
+    }
+}
+
+const SITE_KEYS: &[&str] = &["latitude", "longitude", "elevation", "zone", "aliases"];
+
+impl<'de> Section<'de> for SiteSection {
+    fn place(&self) -> String {
+        format!("the site `{}`", self.site.name)
+    }
+
+    fn entry<A: MapAccess<'de>>(
+        &mut self,
+        key: &Word<'de>,
+        map: &mut A,
+        reading: &mut Reading,
+    ) -> Result<(), A::Error> {
+        match key.text() {
+            name @ ("latitude" | "longitude") => {
+                let axis = if name == "latitude" {
+                    Axis::Latitude
+                } else {
+                    Axis::Longitude
+                };
+                let value = word(map, reading)?;
+                match angle::read(value.text(), axis) {
+                    Ok(degrees) if axis == Axis::Latitude => self.latitude = Some(degrees),
+                    Ok(degrees) => self.longitude = Some(degrees),
+                    Err(error) => reading.mistake(
+                        &value,
+                        format!("{name}: {error}"),
+                        format!("expected {}", axis.expected()),
+                    ),
+                }
+            }
+            "elevation" => {
+                let value = word(map, reading)?;
+                match elevation_m(value.text()) {
+                    Some(metres) => self.site.elevation_m = Some(metres),
+                    None => reading.mistake(
+                        &value,
+                        format!("`{}` is no elevation", value.text()),
+                        "expected metres or feet from -500 m to 9000 m: 240 m, 800 ft",
+                    ),
+                }
+            }
+            "zone" => {
+                let value = word(map, reading)?;
+                match zone_name(value.text()) {
+                    Some(zone) => self.site.zone = Some(zone),
+                    None => {
+                        let db = jiff::tz::db();
+                        let names: Vec<String> = db.available().map(|n| n.to_string()).collect();
+                        let near = nearest_zone(value.text(), &names);
+                        let offered =
+                            near.map_or(String::new(), |near| format!("did you mean `{near}`? "));
+                        reading.mistake(
+                            &value,
+                            format!("there is no time zone `{}`", value.text()),
+                            format!("{offered}expected a name of the IANA time zone database: Europe/London, America/New_York"),
+                        );
+                    }
+                }
+            }
+            "aliases" => {
+                for alias in map.next_value_seed(WordsSeed(reading))? {
+                    self.site.aliases.push(alias.text().to_owned());
+                }
+            }
+            _ => {
+                let place = self.place();
+                reading.unknown(key, &place, SITE_KEYS);
+                map.next_value::<IgnoredAny>()?;
+            }
+        }
+        Ok(())
+    }
+}
+
+struct ObserversSection<'a, 'de>(&'a mut Draft<'de>);
+
+impl<'de> Section<'de> for ObserversSection<'_, 'de> {
+    fn place(&self) -> String {
+        "observers".to_owned()
+    }
+
+    fn entry<A: MapAccess<'de>>(
+        &mut self,
+        key: &Word<'de>,
+        map: &mut A,
+        reading: &mut Reading,
+    ) -> Result<(), A::Error> {
+        let mut observer = ObserverSection {
+            name: key.text().to_owned(),
+            site: None,
+            letters_to: None,
+        };
+        section(map, &mut observer, reading)?;
+        self.0.house.observers.push(Observer {
+            name: observer.name,
+            site: observer.site.as_ref().map(|s| s.text().to_owned()),
+            letters_to: observer.letters_to,
+        });
+        self.0.observer_sites.extend(observer.site);
+        Ok(())
+    }
+}
+
+struct ObserverSection<'de> {
+    name: String,
+    site: Option<Word<'de>>,
+    letters_to: Option<String>,
+}
+
+impl<'de> Section<'de> for ObserverSection<'de> {
+    fn place(&self) -> String {
+        format!("the observer `{}`", self.name)
+    }
+
+    fn entry<A: MapAccess<'de>>(
+        &mut self,
+        key: &Word<'de>,
+        map: &mut A,
+        reading: &mut Reading,
+    ) -> Result<(), A::Error> {
+        match key.text() {
+            "site" => self.site = Some(word(map, reading)?),
+            "letters-to" => {
+                let value = word(map, reading)?;
+                let address = value.text();
+                let well_formed = address
+                    .split_once('@')
+                    .is_some_and(|(a, b)| !a.is_empty() && !b.is_empty() && !b.contains('@'));
+                if well_formed && !address.contains(char::is_whitespace) {
+                    self.letters_to = Some(address.to_owned());
+                } else {
+                    reading.mistake(
+                        &value,
+                        format!("`{address}` is no mail address"),
+                        "expected one such as quill@section.example",
+                    );
+                }
+            }
+            _ => {
+                let place = self.place();
+                reading.unknown(key, &place, &["site", "letters-to"]);
+                map.next_value::<IgnoredAny>()?;
+            }
+        }
+        Ok(())
+    }
+}
+
+/// An elevation in metres: `240 m`, `240`, `800 ft`.
+fn elevation_m(word: &str) -> Option<f64> {
+    let word = word.trim().replace('−', "-");
+    let split = word
+        .find(|c: char| !c.is_ascii_digit() && !"+-.".contains(c))
+        .unwrap_or(word.len());
+    let (number, unit) = word.split_at(split);
+    // the international foot, exactly (1959)
+    let metres = match unit.trim().to_lowercase().as_str() {
+        "" | "m" | "metres" | "meters" | "metre" => 1.0,
+        "ft" | "feet" | "foot" | "'" | "′" => 0.3048,
+        _ => return None,
+    };
+    let value: f64 = number.parse().ok()?;
+    let value = value * metres;
+    (-500.0..=9000.0).contains(&value).then_some(value)
+}
+
+/// The IANA name as the database spells it.
+fn zone_name(word: &str) -> Option<String> {
+    let zone = jiff::tz::TimeZone::get(word.trim()).ok()?;
+    zone.iana_name().map(str::to_owned)
+}
+
+fn nearest_zone<'a>(word: &str, names: &'a [String]) -> Option<&'a str> {
+    let plain = word.trim().replace(' ', "_").to_lowercase();
+    names
+        .iter()
+        .map(|name| {
+            let lower = name.to_lowercase();
+            let city = lower.rsplit('/').next().unwrap_or(&lower);
+            let score =
+                strsim::jaro_winkler(&plain, &lower).max(strsim::jaro_winkler(&plain, city));
+            (score, name.as_str())
+        })
+        .filter(|(score, _)| *score > 0.85)
+        .max_by(|a, b| a.0.total_cmp(&b.0))
+        .map(|(_, name)| name)
+}

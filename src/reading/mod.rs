@@ -1,0 +1,20 @@
+//! Reading: a sheet's text becomes reports as written. One file a quantity (nom parsers), then their assembly.
+//!
+//! What is not here: astronomy, house rules, judgement. Reading never fails: what is not understood stays as itself.
+//!
+//! To add a way of writing something: a word goes into `grammar/words/*.yaml`; a form goes into the file of its quantity
+//! and into the production of the same name in `grammar/*.pest`, with examples beside it.
+
+pub mod angle;
+pub mod equinox;
+mod fold;
+pub mod instant;
+pub mod marks;
+pub mod number;
+pub mod run;
+pub mod scan;
+pub mod site;
+pub mod stet;
+pub mod text;
+pub mod uncertainty;
+pub mod words;
