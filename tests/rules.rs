@@ -1,6 +1,7 @@
 //! The rules: the table against the folder, every page against its rule, one report that breaks each rule and one that nearly does.
 
 #[path = "rules/sheet.rs"]
+#[allow(dead_code)]
 mod sheet;
 
 use colure::house::House;
