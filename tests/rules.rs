@@ -25,19 +25,25 @@ fn examine_together(text: &str) -> Vec<Examined> {
     let house = House::default();
     let selection = Selection::default();
     let mut examined = examine_with(text, &house, &selection);
-    let mut runs = [rules::Run { sheet: "sheet", text, house: &house, examined: &mut examined }];
+    let mut runs = [rules::Run {
+        sheet: "sheet",
+        text,
+        house: &house,
+        examined: &mut examined,
+    }];
     rules::together(&mut runs, house.canonical, NOW, &selection);
     examined
 }
 
 #[test]
 fn the_table_is_the_folder() {
-    let mut files: Vec<String> = std::fs::read_dir(concat!(env!("CARGO_MANIFEST_DIR"), "/src/rules"))
-        .unwrap()
-        .filter_map(|entry| entry.unwrap().file_name().into_string().ok())
-        .filter_map(|name| name.strip_suffix(".rs").map(|n| n.replace('_', "-")))
-        .filter(|name| name != "mod")
-        .collect();
+    let mut files: Vec<String> =
+        std::fs::read_dir(concat!(env!("CARGO_MANIFEST_DIR"), "/src/rules"))
+            .unwrap()
+            .filter_map(|entry| entry.unwrap().file_name().into_string().ok())
+            .filter_map(|name| name.strip_suffix(".rs").map(|n| n.replace('_', "-")))
+            .filter(|name| name != "mod")
+            .collect();
     let mut names: Vec<String> = TABLE.iter().map(|rule| rule.name.to_string()).collect();
     files.sort();
     names.sort();
@@ -56,7 +62,10 @@ fn the_table_is_the_design() {
         site-hemisphere-unclear query, site-disagrees query, never-rises reject, below-horizon reject, low-altitude query, \
         daylight query, near-sun query, near-moon note, horizon-disagrees query, constellation-disagrees query, \
         object-elsewhere query, known-object-here query, report-repeated note, report-outlying query, stet-idle note";
-    let table: Vec<String> = TABLE.iter().map(|r| format!("{} {}", r.name, r.weight.name())).collect();
+    let table: Vec<String> = TABLE
+        .iter()
+        .map(|r| format!("{} {}", r.name, r.weight.name()))
+        .collect();
     assert_eq!(design.split(", ").map(str::trim).collect::<Vec<_>>(), table);
 }
 
@@ -64,11 +73,26 @@ fn the_table_is_the_design() {
 fn every_page_has_its_headings_in_order() {
     for rule in TABLE {
         let page = rule.page();
-        let places: Vec<Option<usize>> = HEADINGS.iter().map(|h| page.find(&format!("\n{h}\n"))).collect();
-        assert!(places.iter().all(Option::is_some) && places.is_sorted(), "{}: {places:?}", rule.name);
-        assert!(page.contains(&format!("[stet {}: reason]", rule.name)), "{}", rule.name);
+        let places: Vec<Option<usize>> = HEADINGS
+            .iter()
+            .map(|h| page.find(&format!("\n{h}\n")))
+            .collect();
+        assert!(
+            places.iter().all(Option::is_some) && places.is_sorted(),
+            "{}: {places:?}",
+            rule.name
+        );
+        assert!(
+            page.contains(&format!("[stet {}: reason]", rule.name)),
+            "{}",
+            rule.name
+        );
         for other in rule.gives_way_to {
-            assert!(rules::find(other).is_some(), "{} gives way to {other}", rule.name);
+            assert!(
+                rules::find(other).is_some(),
+                "{} gives way to {other}",
+                rule.name
+            );
         }
     }
 }
@@ -87,9 +111,19 @@ fn every_page_has_an_example_that_breaks_its_rule() {
         let findings: Vec<_> = all.iter().flat_map(|e| &e.findings).collect();
         let hit = findings.iter().find(|f| f.rule == rule.name);
         let place = hit.is_some_and(|f| f.primary.overlaps(marked[0]));
-        let others: Vec<_> = findings.iter().filter(|f| f.rule != rule.name).map(|f| (f.rule, f.weight, &f.message)).collect();
+        let others: Vec<_> = findings
+            .iter()
+            .filter(|f| f.rule != rule.name)
+            .map(|f| (f.rule, f.weight, &f.message))
+            .collect();
         if !place || others.iter().any(|(_, w, _)| *w > Weight::Note) {
-            wrong.push(format!("{}: {:?} at {:?} ({}); others {others:?}", rule.name, hit.map(|f| &f.message), hit.map(|f| f.primary), marked[0].of(&text)));
+            wrong.push(format!(
+                "{}: {:?} at {:?} ({}); others {others:?}",
+                rule.name,
+                hit.map(|f| &f.message),
+                hit.map(|f| f.primary),
+                marked[0].of(&text)
+            ));
         }
     }
     assert!(wrong.is_empty(), "{}", wrong.join("\n"));

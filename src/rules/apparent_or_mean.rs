@@ -43,10 +43,16 @@ fn check(case: &Case, out: &mut Findings) {
         .iter()
         .map(|(tag, _)| tag)
         .find(|tag| !tag.value.misspelt && tag.value.year.is_some());
-    let (Some(tag), Some(read)) = (governing, case.meant.read) else { return };
+    let (Some(tag), Some(read)) = (governing, case.meant.read) else {
+        return;
+    };
     let said = tag.value.place.is_some()
-        || report.equinoxes.iter().any(|(t, near)| t.value.place.is_some() && *near <= crate::report::Nearness::Head);
-    let finest = (read.first_step_arcsec * read.second_deg.to_radians().cos()).min(read.second_step_arcsec);
+        || report
+            .equinoxes
+            .iter()
+            .any(|(t, near)| t.value.place.is_some() && *near <= crate::report::Nearness::Head);
+    let finest =
+        (read.first_step_arcsec * read.second_deg.to_radians().cos()).min(read.second_step_arcsec);
     if report.position.kind == PositionKind::Equatorial
         && tag.value.year == Some(EquinoxYear::OfDate)
         && !said

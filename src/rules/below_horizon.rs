@@ -35,19 +35,33 @@ pub(super) const RULE: Rule = Rule {
     name: "below-horizon",
     weight: Weight::Reject,
     of_place_or_time: true,
-    gives_way_to: &["never-rises", "ra-unit-unclear", "zone-missing", "zone-doubtful", "date-order-unclear"],
+    gives_way_to: &[
+        "never-rises",
+        "ra-unit-unclear",
+        "zone-missing",
+        "zone-doubtful",
+        "date-order-unclear",
+    ],
     source: include_str!("below_horizon.rs"),
     check,
 };
 
 fn check(case: &Case, out: &mut Findings) {
-    let (Some(altitudes), Some(meant)) = (altitudes(case), case.meant.instant) else { return };
+    let (Some(altitudes), Some(meant)) = (altitudes(case), case.meant.instant) else {
+        return;
+    };
     if altitudes.highest_deg >= -horizon_allowance_deg(case) {
         return;
     }
-    let (Some(icrs), Some(ground)) = (here(case.meant), ground(case.meant)) else { return };
+    let (Some(icrs), Some(ground)) = (here(case.meant), ground(case.meant)) else {
+        return;
+    };
     // a slip's trial asks only whether, and the hours cost a search
-    let up = if case.text.is_empty() { String::new() } else { when_up(case, icrs, ground) };
+    let up = if case.text.is_empty() {
+        String::new()
+    } else {
+        when_up(case, icrs, ground)
+    };
     let mut up = up;
     if let Some(first) = up.get_mut(0..1) {
         first.make_ascii_uppercase();
@@ -61,7 +75,9 @@ fn check(case: &Case, out: &mut Findings) {
         ),
         format!("{up}; ask for the time and its zone."),
     );
-    finding.related.push((case.report.position.span, "the position".to_string()));
+    finding
+        .related
+        .push((case.report.position.span, "the position".to_string()));
     if let Some(span) = case.site_span() {
         finding.related.push((span, "the site".to_string()));
     }

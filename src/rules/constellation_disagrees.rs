@@ -40,15 +40,27 @@ pub(super) const RULE: Rule = Rule {
 };
 
 fn check(case: &Case, out: &mut Findings) {
-    let (Some(stated), Some(icrs), Some(reduced)) = (&case.report.constellation, here(case.meant), case.meant.reduced) else {
+    let (Some(stated), Some(icrs), Some(reduced)) = (
+        &case.report.constellation,
+        here(case.meant),
+        case.meant.reduced,
+    ) else {
         return;
     };
-    let found = case.meant.constellation.unwrap_or_else(|| constellations::at(icrs));
+    let found = case
+        .meant
+        .constellation
+        .unwrap_or_else(|| constellations::at(icrs));
     if found == stated.value {
         return;
     }
     // a coarse position beside a boundary may be on either side; an uncertainty stated counts as well
-    let reach = reduced.step_arcsec.max(case.report.uncertainty_arcsec.as_ref().map_or(0.0, |u| u.value)) / 3600.0;
+    let reach = reduced.step_arcsec.max(
+        case.report
+            .uncertainty_arcsec
+            .as_ref()
+            .map_or(0.0, |u| u.value),
+    ) / 3600.0;
     let cos = icrs.dec_deg.to_radians().cos().max(0.01);
     let near = (0..8).any(|k| {
         let (sin, cos_k) = (f64::from(k) * std::f64::consts::FRAC_PI_4).sin_cos();
@@ -61,8 +73,16 @@ fn check(case: &Case, out: &mut Findings) {
     if near {
         return;
     }
-    let distance = if case.text.is_empty() { 0.0 } else { constellations::distance_deg(icrs, stated.value) };
-    let how_far = if distance > 0.05 { format!(", {} outside {}", apart(distance * 3600.0), stated.value) } else { String::new() };
+    let distance = if case.text.is_empty() {
+        0.0
+    } else {
+        constellations::distance_deg(icrs, stated.value)
+    };
+    let how_far = if distance > 0.05 {
+        format!(", {} outside {}", apart(distance * 3600.0), stated.value)
+    } else {
+        String::new()
+    };
     out.add(
         stated.span,
         format!(

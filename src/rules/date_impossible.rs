@@ -38,7 +38,9 @@ pub(super) const RULE: Rule = Rule {
 };
 
 fn check(case: &Case, out: &mut Findings) {
-    let Some(InstantTrouble::Impossible(why)) = &case.meant.instant_trouble else { return };
+    let Some(InstantTrouble::Impossible(why)) = &case.meant.instant_trouble else {
+        return;
+    };
     let instant = case.report.instants.first().map(|(instant, _)| instant);
     let date = instant.and_then(|i| i.date);
     let span = match (date, instant.and_then(|i| i.clock)) {
@@ -58,11 +60,14 @@ fn check(case: &Case, out: &mut Findings) {
 /// Is there such a day in the calendar?
 fn exists(date: &DateWritten) -> bool {
     match *date {
-        DateWritten::Calendar { year, month, day, .. } => {
+        DateWritten::Calendar {
+            year, month, day, ..
+        } => {
             let whole = day.value().floor() as u32;
             (1..=12).contains(&month)
                 && (1..=31).contains(&whole)
-                && civil(day_number(i64::from(year), month, whole)) == (i64::from(year), month, whole)
+                && civil(day_number(i64::from(year), month, whole))
+                    == (i64::from(year), month, whole)
         }
         DateWritten::Julian { .. } => true,
     }

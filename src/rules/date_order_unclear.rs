@@ -37,9 +37,18 @@ pub(super) const RULE: Rule = Rule {
 };
 
 fn check(case: &Case, out: &mut Findings) {
-    let Some((instant, _)) = case.report.instants.first() else { return };
+    let Some((instant, _)) = case.report.instants.first() else {
+        return;
+    };
     let Some(date) = instant.date else { return };
-    let DateWritten::Calendar { year, month: written_month, day, order_unclear: true, .. } = date.value else {
+    let DateWritten::Calendar {
+        year,
+        month: written_month,
+        day,
+        order_unclear: true,
+        ..
+    } = date.value
+    else {
         return;
     };
     let written_day = day.value().floor() as u32;
@@ -67,8 +76,17 @@ fn check(case: &Case, out: &mut Findings) {
 pub(crate) fn exchanged(report: &Report) -> Option<Report> {
     let mut other = report.clone();
     let date = other.instants.first_mut()?.0.date.as_mut()?;
-    let DateWritten::Calendar { month, day, to_day, .. } = &mut date.value else { return None };
-    if day.places > 0 || *day == Number::whole(u64::from(*month)) || !(1..=12).contains(&day.mantissa) || to_day.is_some() {
+    let DateWritten::Calendar {
+        month, day, to_day, ..
+    } = &mut date.value
+    else {
+        return None;
+    };
+    if day.places > 0
+        || *day == Number::whole(u64::from(*month))
+        || !(1..=12).contains(&day.mantissa)
+        || to_day.is_some()
+    {
         return None;
     }
     let old = *month;

@@ -50,19 +50,31 @@ pub(super) const RULE: Rule = Rule {
 
 fn check(case: &Case, out: &mut Findings) {
     let limit = case.house.darkness_deg;
-    let (Some(sun), Some(meant)) = (sun_altitudes(case), case.meant.instant) else { return };
-    if sun.lowest_deg <= limit || is_body(case, Body::Sun) || is_body(case, Body::Moon) || is_bright(case) {
+    let (Some(sun), Some(meant)) = (sun_altitudes(case), case.meant.instant) else {
+        return;
+    };
+    if sun.lowest_deg <= limit
+        || is_body(case, Body::Sun)
+        || is_body(case, Body::Moon)
+        || is_bright(case)
+    {
         return;
     }
     let words = if sun.nominal_deg >= 0.0 {
         format!("the Sun stood {} high", rough(sun.nominal_deg))
     } else {
-        format!("the Sun was only {} below the horizon", rough(-sun.nominal_deg))
+        format!(
+            "the Sun was only {} below the horizon",
+            rough(-sun.nominal_deg)
+        )
     };
     let finding = out.add(
         case.when_span(),
         format!("At {} {words} at the site.", instant(meant.utc)),
-        format!("It should be below {}: ask for the time and its zone.", rough(limit)),
+        format!(
+            "It should be below {}: ask for the time and its zone.",
+            rough(limit)
+        ),
     );
     if let Some(span) = case.site_span() {
         finding.related.push((span, "the site".to_string()));
@@ -71,7 +83,9 @@ fn check(case: &Case, out: &mut Findings) {
 
 /// Bright enough by the house's rules, by the magnitude stated or that of the object named.
 fn is_bright(case: &Case) -> bool {
-    let Some(limit) = case.house.daylight_magnitude else { return false };
+    let Some(limit) = case.house.daylight_magnitude else {
+        return false;
+    };
     let stated = case.report.magnitude.as_ref().map(|m| m.value);
     stated
         .or_else(|| named(case.report, case.house).and_then(|known| known.magnitude()))

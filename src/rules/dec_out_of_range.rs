@@ -52,10 +52,14 @@ fn check(case: &Case, out: &mut Findings) {
         };
         let value = angle.value();
         // 89° 75′ is a fault of its minutes, not of its degrees
-        let beyond = value.abs() > most
-            && (angle.parts()[0].number.value() > most || !has_sixty(&angle));
+        let beyond =
+            value.abs() > most && (angle.parts()[0].number.value() > most || !has_sixty(&angle));
         if beyond || (distance && value < 0.0) {
-            let limits = if distance { "from 0° to 180°" } else { "from −90° to +90°" };
+            let limits = if distance {
+                "from 0° to 180°"
+            } else {
+                "from −90° to +90°"
+            };
             let advice = match value.abs() {
                 v if !distance && v < 360.0 => {
                     "Ask for the original: a digit may be wrong, or a right ascension in degrees stands in its place."
@@ -64,7 +68,10 @@ fn check(case: &Case, out: &mut Findings) {
             };
             out.add(
                 angle.span,
-                format!("{} cannot be a {what}: it goes {limits}.", case.quote(angle.span)),
+                format!(
+                    "{} cannot be a {what}: it goes {limits}.",
+                    case.quote(angle.span)
+                ),
                 advice,
             );
         }

@@ -77,7 +77,14 @@ fn check(case: &Case, out: &mut Findings) {
     } else {
         out.add(
             angle.span,
-            format!("The declination {words} has no sign; it is read as north{}.", if broken { ", through a broken mark" } else { "" }),
+            format!(
+                "The declination {words} has no sign; it is read as north{}.",
+                if broken {
+                    ", through a broken mark"
+                } else {
+                    ""
+                }
+            ),
             "Write + or −.",
         );
     }

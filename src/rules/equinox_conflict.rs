@@ -47,8 +47,13 @@ fn check(case: &Case, out: &mut Findings) {
         .filter(|(tag, near)| *near != Nearness::Standing && !tag.value.misspelt)
         .map(|(tag, _)| tag)
         .collect();
-    let Some((governing, others)) = tags.split_first() else { return };
-    let Some(other) = others.iter().find(|other| differ(&governing.value, &other.value)) else {
+    let Some((governing, others)) = tags.split_first() else {
+        return;
+    };
+    let Some(other) = others
+        .iter()
+        .find(|other| differ(&governing.value, &other.value))
+    else {
         return;
     };
     out.add(
@@ -72,8 +77,14 @@ fn differ(a: &EquinoxTag, b: &EquinoxTag) -> bool {
     let years = match (a.year, b.year) {
         (Some(EquinoxYear::OfDate), Some(EquinoxYear::OfDate)) => false,
         (
-            Some(EquinoxYear::Year { letter: la, year: ya }),
-            Some(EquinoxYear::Year { letter: lb, year: yb }),
+            Some(EquinoxYear::Year {
+                letter: la,
+                year: ya,
+            }),
+            Some(EquinoxYear::Year {
+                letter: lb,
+                year: yb,
+            }),
         ) => {
             let (ya, yb) = (ya.value(), yb.value());
             (ya - yb).abs() > 1e-6 || words::is_besselian(la, ya) != words::is_besselian(lb, yb)

@@ -37,9 +37,15 @@ pub(super) const RULE: Rule = Rule {
 
 fn check(case: &Case, out: &mut Findings) {
     let own = case.report.equinoxes.iter().map(|(tag, _)| tag);
-    let of_forms = case.report.other_forms.iter().filter_map(|(_, tag)| tag.as_ref());
+    let of_forms = case
+        .report
+        .other_forms
+        .iter()
+        .filter_map(|(_, tag)| tag.as_ref());
     for tag in own.chain(of_forms) {
-        let Some(EquinoxYear::Year { year, .. }) = tag.value.year else { continue };
+        let Some(EquinoxYear::Year { year, .. }) = tag.value.year else {
+            continue;
+        };
         let year = year.value();
         if !tag.value.misspelt && !(1600.0..=2100.0).contains(&year) {
             out.add(

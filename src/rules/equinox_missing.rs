@@ -49,12 +49,21 @@ pub(crate) fn usual() -> Vec<(&'static str, EquinoxTag)> {
         system: None,
         year: Some(EquinoxYear::Year {
             letter: Some(letter),
-            year: Number { mantissa: year * 10, places: 1, whole_digits: 4 },
+            year: Number {
+                mantissa: year * 10,
+                places: 1,
+                whole_digits: 4,
+            },
         }),
         place: None,
         misspelt: false,
     };
-    let of_date = EquinoxTag { system: None, year: Some(EquinoxYear::OfDate), place: None, misspelt: false };
+    let of_date = EquinoxTag {
+        system: None,
+        year: Some(EquinoxYear::OfDate),
+        place: None,
+        misspelt: false,
+    };
     vec![
         ("J2000.0", year(YearLetter::Julian, 2000)),
         ("B1950.0", year(YearLetter::Besselian, 1950)),
@@ -80,7 +89,8 @@ fn check(case: &Case, out: &mut Findings) {
     }
     let advice = match fitting(case) {
         Some(words) => format!("{words} Ask, or write the equinox after the position."),
-        None => "The rest of the report does not tell which; write the equinox after the position.".to_string(),
+        None => "The rest of the report does not tell which; write the equinox after the position."
+            .to_string(),
     };
     out.add(
         position.span,
@@ -105,9 +115,14 @@ fn fitting(case: &Case) -> Option<String> {
     let mut tried = Vec::new();
     for (name, tag) in usual() {
         let mut read = report.clone();
-        read.equinoxes.insert(0, (Spanned::new(tag, report.position.span), Nearness::Own));
+        read.equinoxes
+            .insert(0, (Spanned::new(tag, report.position.span), Nearness::Own));
         let meant = case.mean(&read);
-        let changed = Case { report: &read, meant: &meant, ..*case };
+        let changed = Case {
+            report: &read,
+            meant: &meant,
+            ..*case
+        };
         let distance = known
             .and_then(|k| k.expected(&changed))
             .zip(here(&meant))
@@ -117,10 +132,13 @@ fn fitting(case: &Case) -> Option<String> {
         }
     }
     let fits: Vec<_> = tried.iter().filter(|(_, broken, _)| *broken == 0).collect();
-    let nearest = |(name, _, distance): &(&str, usize, Option<f64>)| match (distance, &report.object) {
-        (Some(d), Some(object)) => format!("With {name} it lies {} from {}.", apart(*d), object.value),
-        _ => format!("Only {name} fits the rest of the report."),
-    };
+    let nearest =
+        |(name, _, distance): &(&str, usize, Option<f64>)| match (distance, &report.object) {
+            (Some(d), Some(object)) => {
+                format!("With {name} it lies {} from {}.", apart(*d), object.value)
+            }
+            _ => format!("Only {name} fits the rest of the report."),
+        };
     match fits.as_slice() {
         [one] => Some(nearest(one)),
         [] => None,

@@ -60,12 +60,22 @@ fn stated(s: &StatedHorizon) -> Option<Stated> {
     let (value, step) = (s.angle.value(), s.angle.step());
     let (name, quantity, deg, step_deg) = match s.quantity {
         HorizonQuantity::Altitude => ("altitude", HorizonQuantity::Altitude, value, step),
-        HorizonQuantity::ZenithDistance => ("zenith distance", HorizonQuantity::Altitude, 90.0 - value, step),
+        HorizonQuantity::ZenithDistance => (
+            "zenith distance",
+            HorizonQuantity::Altitude,
+            90.0 - value,
+            step,
+        ),
         HorizonQuantity::Azimuth => ("azimuth", HorizonQuantity::Azimuth, value, step),
         HorizonQuantity::HourAngle => {
             let degrees = s.angle.parts()[0].mark == Mark::Degree;
             let scale = if degrees { 1.0 } else { 15.0 };
-            ("hour angle", HorizonQuantity::HourAngle, value * scale, step * scale)
+            (
+                "hour angle",
+                HorizonQuantity::HourAngle,
+                value * scale,
+                step * scale,
+            )
         }
         HorizonQuantity::Airmass => {
             let altitude = |x: f64| (1.0 / x.max(1.0)).asin().to_degrees();
@@ -73,19 +83,35 @@ fn stated(s: &StatedHorizon) -> Option<Stated> {
                 return None;
             }
             let step_deg = altitude(value - step) - altitude(value + step);
-            ("airmass", HorizonQuantity::Altitude, altitude(value), step_deg)
+            (
+                "airmass",
+                HorizonQuantity::Altitude,
+                altitude(value),
+                step_deg,
+            )
         }
     };
-    Some(Stated { name, quantity, deg, step_deg })
+    Some(Stated {
+        name,
+        quantity,
+        deg,
+        step_deg,
+    })
 }
 
 fn check(case: &Case, out: &mut Findings) {
-    let (Some(computed), Some(instant), Some(ground), Some(icrs)) =
-        (case.meant.horizon, case.meant.instant, ground(case.meant), here(case.meant))
-    else {
+    let (Some(computed), Some(instant), Some(ground), Some(icrs)) = (
+        case.meant.horizon,
+        case.meant.instant,
+        ground(case.meant),
+        here(case.meant),
+    ) else {
         return;
     };
-    if case.report.stated_horizon.is_empty() || case.report.position.kind == PositionKind::Horizontal || instant.step_s > 7_200.0 {
+    if case.report.stated_horizon.is_empty()
+        || case.report.position.kind == PositionKind::Horizontal
+        || instant.step_s > 7_200.0
+    {
         return;
     }
     let nominal = AltAz {
@@ -102,12 +128,17 @@ fn check(case: &Case, out: &mut Findings) {
             .collect()
     };
     for written in &case.report.stated_horizon {
-        let Some(said) = stated(written) else { continue };
+        let Some(said) = stated(written) else {
+            continue;
+        };
         let off = moments
             .iter()
             .flat_map(|place| {
                 let refraction = refraction_deg(place.altitude_deg, ground.elevation_m);
-                [difference(&said, place, 0.0), difference(&said, place, refraction)]
+                [
+                    difference(&said, place, 0.0),
+                    difference(&said, place, refraction),
+                ]
             })
             .fold(f64::INFINITY, f64::min);
         if off <= 1.0 + said.step_deg {
@@ -131,7 +162,9 @@ fn check(case: &Case, out: &mut Findings) {
             ),
             "Ask for the time and its zone, and for the reading.",
         );
-        finding.related.push((case.when_span(), "the time".to_string()));
+        finding
+            .related
+            .push((case.when_span(), "the time".to_string()));
     }
 }
 
@@ -139,7 +172,9 @@ fn check(case: &Case, out: &mut Findings) {
 fn difference(said: &Stated, place: &AltAz, refraction: f64) -> f64 {
     let around = |a: f64, b: f64| ((a - b + 180.0).rem_euclid(360.0) - 180.0).abs();
     match said.quantity {
-        HorizonQuantity::Azimuth => around(said.deg, place.azimuth_deg) * place.altitude_deg.to_radians().cos(),
+        HorizonQuantity::Azimuth => {
+            around(said.deg, place.azimuth_deg) * place.altitude_deg.to_radians().cos()
+        }
         HorizonQuantity::HourAngle => around(said.deg, place.hour_angle_h * 15.0),
         _ => (said.deg - place.altitude_deg - refraction).abs(),
     }

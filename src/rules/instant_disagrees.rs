@@ -39,7 +39,9 @@ pub(super) const RULE: Rule = Rule {
 };
 
 fn check(case: &Case, out: &mut Findings) {
-    let Some((governing, near)) = case.report.instants.first() else { return };
+    let Some((governing, near)) = case.report.instants.first() else {
+        return;
+    };
     days(case, governing, out);
     for (other, other_near) in case.report.instants.iter().skip(1) {
         if *other_near <= Nearness::Block && *near <= Nearness::Block {
@@ -49,7 +51,9 @@ fn check(case: &Case, out: &mut Findings) {
 }
 
 fn is_julian(instant: &InstantWritten) -> bool {
-    instant.date.is_some_and(|d| matches!(d.value, DateWritten::Julian { .. }))
+    instant
+        .date
+        .is_some_and(|d| matches!(d.value, DateWritten::Julian { .. }))
 }
 
 /// A Julian date beside a calendar date, or beside another Julian date.
@@ -59,11 +63,23 @@ fn moments(case: &Case, governing: &InstantWritten, other: &InstantWritten, out:
     }
     let mut read = case.report.clone();
     read.instants = vec![(other.clone(), Nearness::Own)];
-    let (Some(a), Some(b)) = (case.meant.instant, case.mean(&read).instant) else { return };
+    let (Some(a), Some(b)) = (case.meant.instant, case.mean(&read).instant) else {
+        return;
+    };
     let apart = seconds_between(a.utc, b.utc);
-    let light_time = if a.heliocentric || b.heliocentric { 500.0 } else { 0.0 };
+    let light_time = if a.heliocentric || b.heliocentric {
+        500.0
+    } else {
+        0.0
+    };
     // a date without a clock time may be that of the evening
-    let night = |i: &InstantWritten| if !is_julian(i) && i.clock.is_none() && a.step_s.max(b.step_s) >= 86_400.0 { 86_400.0 } else { 0.0 };
+    let night = |i: &InstantWritten| {
+        if !is_julian(i) && i.clock.is_none() && a.step_s.max(b.step_s) >= 86_400.0 {
+            86_400.0
+        } else {
+            0.0
+        }
+    };
     if apart.abs() <= a.step_s + b.step_s + light_time + night(governing) + night(other) + 2.0 {
         return;
     }
@@ -80,13 +96,25 @@ fn moments(case: &Case, governing: &InstantWritten, other: &InstantWritten, out:
         "Ask which of the two is right.",
     )
     .related
-    .push((governing.span, "the other statement of the time".to_string()));
+    .push((
+        governing.span,
+        "the other statement of the time".to_string(),
+    ));
 }
 
 /// Weekday and double date against the calendar.
 fn days(case: &Case, instant: &InstantWritten, out: &mut Findings) {
     let Some(date) = instant.date else { return };
-    let DateWritten::Calendar { year, month, day, to_day, .. } = date.value else { return };
+    let DateWritten::Calendar {
+        year,
+        month,
+        day,
+        to_day,
+        ..
+    } = date.value
+    else {
+        return;
+    };
     let number = day_number(i64::from(year), month, day.value().floor() as u32);
     let (_, _, next) = civil(number + 1);
     if let Some(to_day) = to_day.filter(|to_day| *to_day != next) {

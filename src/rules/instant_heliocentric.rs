@@ -40,10 +40,15 @@ fn check(case: &Case, out: &mut Findings) {
         return;
     }
     let instant = case.report.instants.first().map(|(instant, _)| instant);
-    let span = instant.map_or(case.report.position.span, |i| i.date.map_or(i.span, |d| d.span));
+    let span = instant.map_or(case.report.position.span, |i| {
+        i.date.map_or(i.span, |d| d.span)
+    });
     out.add(
         span,
-        format!("{} is a time at the Sun or the barycentre, up to 8.3 minutes from the clock.", case.quote(span)),
+        format!(
+            "{} is a time at the Sun or the barycentre, up to 8.3 minutes from the clock.",
+            case.quote(span)
+        ),
         "It was taken as the clock's; give the UTC of the observation too.",
     );
 }

@@ -37,7 +37,9 @@ pub(super) const RULE: Rule = Rule {
 };
 
 fn check(case: &Case, out: &mut Findings) {
-    let Some(meant) = case.meant.instant else { return };
+    let Some(meant) = case.meant.instant else {
+        return;
+    };
     let ahead = seconds_between(case.now_utc, meant.utc);
     // the leap seconds between two quasi Julian dates are no future
     if ahead <= 2.0 {
@@ -45,7 +47,11 @@ fn check(case: &Case, out: &mut Findings) {
     }
     out.add(
         case.when_span(),
-        format!("{} lies {} in the future.", instant(meant.utc), lapse(ahead)),
+        format!(
+            "{} lies {} in the future.",
+            instant(meant.utc),
+            lapse(ahead)
+        ),
         "Ask for the date of observation.",
     );
 }

@@ -42,21 +42,28 @@ pub(super) const RULE: Rule = Rule {
 };
 
 fn check(case: &Case, out: &mut Findings) {
-    let (Some(new), Some(icrs), Some(reduced)) = (case.report.claims_new, here(case.meant), case.meant.reduced) else {
+    let (Some(new), Some(icrs), Some(reduced)) =
+        (case.report.claims_new, here(case.meant), case.meant.reduced)
+    else {
         return;
     };
     if case.report.role != Role::Measured || named(case.report, case.house).is_some() {
         return;
     }
     let step = reduced.step_arcsec;
-    let Some((name, distance)) = body_here(case, icrs).or_else(|| fixed_here(case, icrs, step)) else {
+    let Some((name, distance)) = body_here(case, icrs).or_else(|| fixed_here(case, icrs, step))
+    else {
         return;
     };
     out.add(
         case.report.position.span,
         format!(
             "{name} stands {}; the text speaks of something new ({}).",
-            if distance < 1.0 { "just there".to_string() } else { format!("{} from there", apart(distance)) },
+            if distance < 1.0 {
+                "just there".to_string()
+            } else {
+                format!("{} from there", apart(distance))
+            },
             case.quote(new)
         ),
         "Ask whether it was told apart from that.",
@@ -83,7 +90,14 @@ fn body_here(case: &Case, icrs: Direction) -> Option<(String, f64)> {
             (distance <= reach).then(|| (body_name(body).to_string(), distance))
         })
         .map(|(name, distance)| {
-            (if name == "the Moon" { "The Moon".to_string() } else { name }, distance)
+            (
+                if name == "the Moon" {
+                    "The Moon".to_string()
+                } else {
+                    name
+                },
+                distance,
+            )
         })
 }
 
@@ -91,13 +105,21 @@ fn body_here(case: &Case, icrs: Direction) -> Option<(String, f64)> {
 fn fixed_here(case: &Case, icrs: Direction, step: f64) -> Option<(String, f64)> {
     let reach = |radius: f64| radius.max(60.0).max((3.0 * step).min(600.0));
     let year = case.meant.instant.map_or(2000.0, |i| julian_year(i.utc));
-    let from_catalogue = catalogue::near(icrs, 2.0).into_iter().filter_map(|(entry, _)| {
-        let bright = entry.radius_arcsec > 0.0 || entry.v_mag.is_some_and(|v| v <= 6.5);
-        let distance = separation_deg(icrs, entry.at_epoch(year)).min(separation_deg(icrs, entry.icrs)) * 3600.0;
-        (bright && distance <= reach(entry.radius_arcsec)).then(|| (entry.name.to_string(), distance))
-    });
+    let from_catalogue = catalogue::near(icrs, 2.0)
+        .into_iter()
+        .filter_map(|(entry, _)| {
+            let bright = entry.radius_arcsec > 0.0 || entry.v_mag.is_some_and(|v| v <= 6.5);
+            let distance = separation_deg(icrs, entry.at_epoch(year))
+                .min(separation_deg(icrs, entry.icrs))
+                * 3600.0;
+            (bright && distance <= reach(entry.radius_arcsec))
+                .then(|| (entry.name.to_string(), distance))
+        });
     let own = case.house.known_objects.iter().filter_map(|object| {
-        let at = Direction { ra_deg: object.ra_deg, dec_deg: object.dec_deg };
+        let at = Direction {
+            ra_deg: object.ra_deg,
+            dec_deg: object.dec_deg,
+        };
         let distance = separation_deg(icrs, at) * 3600.0;
         (distance <= reach(object.radius_arcsec)).then(|| (object.name.clone(), distance))
     });

@@ -38,6 +38,7 @@ pub(super) const RULE: Rule = Rule {
     gives_way_to: &[
         "below-horizon",
         "never-rises",
+        "near-sun",
         "ra-unit-unclear",
         "zone-missing",
         "zone-doubtful",
@@ -48,8 +49,15 @@ pub(super) const RULE: Rule = Rule {
 };
 
 fn check(case: &Case, out: &mut Findings) {
-    let Some(altitudes) = altitudes(case) else { return };
-    let height = case.meant.site.as_ref().and_then(|s| s.elevation_m).unwrap_or(0.0);
+    let Some(altitudes) = altitudes(case) else {
+        return;
+    };
+    let height = case
+        .meant
+        .site
+        .as_ref()
+        .and_then(|s| s.elevation_m)
+        .unwrap_or(0.0);
     let lowest = case.house.lowest_altitude_deg;
     if altitudes.highest_deg < -horizon_allowance_deg(case)
         || altitudes.highest_deg + refraction_deg(altitudes.highest_deg, height) >= lowest
@@ -66,7 +74,9 @@ fn check(case: &Case, out: &mut Findings) {
         ),
         "Ask whether it was seen so low, and for the time and its zone.",
     );
-    finding.related.push((case.report.position.span, "the position".to_string()));
+    finding
+        .related
+        .push((case.report.position.span, "the position".to_string()));
     if let Some(span) = case.site_span() {
         finding.related.push((span, "the site".to_string()));
     }

@@ -53,7 +53,10 @@ fn say(case: &Case, angle: &Angle, trouble: Option<&'static str>, out: &mut Find
     if let Some(trouble) = trouble {
         out.add(
             angle.span,
-            format!("The marks of {} do not belong together: {trouble}.", case.quote(angle.span)),
+            format!(
+                "The marks of {} do not belong together: {trouble}.",
+                case.quote(angle.span)
+            ),
             "Ask which was meant: hours take h m s, degrees take ° ′ ″.",
         );
     }
@@ -63,7 +66,14 @@ fn say(case: &Case, angle: &Angle, trouble: Option<&'static str>, out: &mut Find
 fn trouble(angle: &Angle, may_be_hours: bool) -> Option<&'static str> {
     let marks: Vec<Mark> = angle.parts().iter().map(|p| p.mark).collect();
     let said = |wanted: &[Mark]| marks.iter().any(|m| wanted.contains(m));
-    let letters = [Mark::Hour, Mark::Degree, Mark::Minute, Mark::Second, Mark::Prime, Mark::DoublePrime];
+    let letters = [
+        Mark::Hour,
+        Mark::Degree,
+        Mark::Minute,
+        Mark::Second,
+        Mark::Prime,
+        Mark::DoublePrime,
+    ];
     if said(&[Mark::Colon]) && said(&letters) {
         return Some("colons stand beside other marks");
     }
@@ -78,7 +88,8 @@ fn trouble(angle: &Angle, may_be_hours: bool) -> Option<&'static str> {
     if rest.iter().any(|m| matches!(m, Mark::Hour | Mark::Degree)) {
         return Some("the mark of hours or degrees stands on a later figure");
     }
-    let second_first = matches!(marks.get(1), Some(Mark::Second | Mark::DoublePrime)) && marks.len() > 2;
+    let second_first =
+        matches!(marks.get(1), Some(Mark::Second | Mark::DoublePrime)) && marks.len() > 2;
     let minute_last = matches!(marks.get(2), Some(Mark::Minute | Mark::Prime));
     if second_first || minute_last {
         return Some("minutes and seconds have each other's marks");

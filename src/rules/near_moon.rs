@@ -47,14 +47,19 @@ pub(super) const RULE: Rule = Rule {
 };
 
 fn check(case: &Case, out: &mut Findings) {
-    let (Some(horizon), Some(instant)) = (case.meant.horizon, case.meant.instant) else { return };
+    let (Some(horizon), Some(instant)) = (case.meant.horizon, case.meant.instant) else {
+        return;
+    };
     // in two hours the Moon moves by its own disc twice over: a coarser time says nothing
     if instant.step_s > 7_200.0 || horizon.moon_separation_deg >= 3.0 || is_body(case, Body::Moon) {
         return;
     }
     out.add(
         case.report.position.span,
-        format!("The Moon was {} from there.", apart(horizon.moon_separation_deg * 3600.0)),
+        format!(
+            "The Moon was {} from there.",
+            apart(horizon.moon_separation_deg * 3600.0)
+        ),
         "Bear its light and its reflections in mind.",
     );
 }

@@ -46,7 +46,9 @@ pub(super) const RULE: Rule = Rule {
 pub(crate) const CAUTION: &str = "Caution: never look at or near the Sun through a telescope, a finder or binoculars, it blinds at once; follow the safety rules of your site and club.";
 
 fn check(case: &Case, out: &mut Findings) {
-    let (Some(icrs), Some(instant)) = (here(case.meant), case.meant.instant) else { return };
+    let (Some(icrs), Some(instant)) = (here(case.meant), case.meant.instant) else {
+        return;
+    };
     let separation = match case.meant.horizon {
         Some(h) => h.sun_separation_deg,
         None => separation_deg(icrs, bodies::place(Body::Sun, instant.utc, None).icrs),
@@ -55,12 +57,20 @@ fn check(case: &Case, out: &mut Findings) {
         return;
     }
     if is_body(case, Body::Sun) {
-        out.add_as(Weight::Note, case.report.position.span, "This is the Sun.", CAUTION);
+        out.add_as(
+            Weight::Note,
+            case.report.position.span,
+            "This is the Sun.",
+            CAUTION,
+        );
         return;
     }
     out.add(
         case.report.position.span,
-        format!("The position is only {} from the Sun at that date.", apart(separation * 3600.0)),
+        format!(
+            "The position is only {} from the Sun at that date.",
+            apart(separation * 3600.0)
+        ),
         format!("Ask for the date and the position. {CAUTION}"),
     )
     .related

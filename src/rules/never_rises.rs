@@ -40,10 +40,15 @@ pub(super) const RULE: Rule = Rule {
 };
 
 fn check(case: &Case, out: &mut Findings) {
-    let (Some(reduced), Some(site)) = (case.meant.reduced, &case.meant.site) else { return };
+    let (Some(reduced), Some(site)) = (case.meant.reduced, &case.meant.site) else {
+        return;
+    };
     // without an instant the declination of date is not known: precession moves it by up to 20″ a year, half a degree in 90 years
     let (declination, precession) = match case.meant.horizon {
-        Some(h) => (declination_of_date_deg(h.altitude_deg, h.azimuth_deg, site.latitude_deg), 0.0),
+        Some(h) => (
+            declination_of_date_deg(h.altitude_deg, h.azimuth_deg, site.latitude_deg),
+            0.0,
+        ),
         None => (reduced.icrs_dec_deg, 0.5),
     };
     let best = 90.0 - (site.latitude_deg - declination).abs();

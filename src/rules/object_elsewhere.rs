@@ -43,7 +43,11 @@ pub(super) const RULE: Rule = Rule {
 /// How far the position may be from the object, arcsec.
 pub(crate) fn limit_arcsec(case: &Case, expected: &Expected) -> f64 {
     let step = case.meant.reduced.map_or(0.0, |r| r.step_arcsec);
-    let said = case.report.uncertainty_arcsec.as_ref().map_or(0.0, |u| u.value);
+    let said = case
+        .report
+        .uncertainty_arcsec
+        .as_ref()
+        .map_or(0.0, |u| u.value);
     expected.radius_arcsec.max(120.0).max(3.0 * step).max(said) + expected.slack_arcsec
 }
 
@@ -53,17 +57,26 @@ fn check(case: &Case, out: &mut Findings) {
         return;
     }
     let Some(icrs) = here(case.meant) else { return };
-    let Some(expected) = named(case.report, case.house).and_then(|known| known.expected(case)) else {
+    let Some(expected) = named(case.report, case.house).and_then(|known| known.expected(case))
+    else {
         return;
     };
     let distance = separation_deg(icrs, expected.icrs) * 3600.0;
     if distance <= limit_arcsec(case, &expected) {
         return;
     }
-    let when = if case.meant.instant.is_some() { " then" } else { "" };
+    let when = if case.meant.instant.is_some() {
+        " then"
+    } else {
+        ""
+    };
     out.add(
         case.object_span(),
-        format!("{} is {} from the position given.", expected.name, apart(distance)),
+        format!(
+            "{} is {} from the position given.",
+            expected.name,
+            apart(distance)
+        ),
         format!(
             "It stands at {} (ICRS){when}: ask which is right, the name or the position.",
             place(expected.icrs.ra_deg, expected.icrs.dec_deg)

@@ -43,11 +43,9 @@ fn check(case: &Case, out: &mut Findings) {
     }
     match report.position.kind {
         PositionKind::Equatorial => {
-            let governing = report
-                .equinoxes
-                .iter()
-                .map(|(tag, _)| tag)
-                .find(|tag| !tag.value.misspelt && (tag.value.year.is_some() || tag.value.place.is_some()));
+            let governing = report.equinoxes.iter().map(|(tag, _)| tag).find(|tag| {
+                !tag.value.misspelt && (tag.value.year.is_some() || tag.value.place.is_some())
+            });
             let Some(tag) = governing.filter(|tag| {
                 tag.value.year == Some(EquinoxYear::OfDate)
                     || (tag.value.year.is_none() && tag.value.place.is_some())
@@ -56,7 +54,10 @@ fn check(case: &Case, out: &mut Findings) {
             };
             out.add(
                 tag.span,
-                format!("{} needs a date, and the report has none that can be used.", case.quote(tag.span)),
+                format!(
+                    "{} needs a date, and the report has none that can be used.",
+                    case.quote(tag.span)
+                ),
                 "Ask for the date of observation.",
             );
         }

@@ -57,7 +57,8 @@ fn check(case: &Case, out: &mut Findings) {
         if !gap.beyond_steps {
             continue;
         }
-        let advice = mend(report, form).unwrap_or_else(|| "Ask which of the two is right.".to_string());
+        let advice =
+            mend(report, form).unwrap_or_else(|| "Ask which of the two is right.".to_string());
         out.add(
             report.position.span,
             format!(
@@ -94,7 +95,9 @@ fn mend(report: &Report, form: &Position) -> Option<String> {
         d > a[k].1 + b[k].1 + 1e-9
     };
     let wrong: Vec<usize> = (0..2).filter(|k| apart(*k)).collect();
-    let [axis] = wrong.as_slice() else { return None };
+    let [axis] = wrong.as_slice() else {
+        return None;
+    };
     let pick = |p: &Position| if *axis == 0 { p.first } else { p.second };
     let unit = |p: &Position| *axis == 0 && first_unit(p) == Some(AngleUnit::Hours);
     // an editor looks at the other form first: it is the one written in passing
@@ -146,15 +149,26 @@ fn other_system(case: &Case, stated: &StatedOther, out: &mut Findings) {
     let Some(icrs) = here(case.meant) else { return };
     let step = case.meant.reduced.map_or(0.0, |r| r.step_arcsec);
     let (longitude, latitude) = (stated.longitude.value(), stated.latitude.value());
-    let said = Direction { ra_deg: longitude, dec_deg: latitude };
+    let said = Direction {
+        ra_deg: longitude,
+        dec_deg: latitude,
+    };
     let (name, places) = if stated.galactic {
         ("galactic", vec![galactic(icrs)])
     } else {
         // of J2000.0, of B1950.0 or of date: which is seldom said, so the nearest counts
-        let now = case.meant.instant.map_or(0.0, |i| ((i.utc.0 - 2_451_545.0) + i.utc.1) / 36_525.0);
-        ("ecliptic", [0.0, -0.5, now].map(|t| ecliptic(icrs, t)).to_vec())
+        let now = case
+            .meant
+            .instant
+            .map_or(0.0, |i| ((i.utc.0 - 2_451_545.0) + i.utc.1) / 36_525.0);
+        (
+            "ecliptic",
+            [0.0, -0.5, now].map(|t| ecliptic(icrs, t)).to_vec(),
+        )
     };
-    let own = (stated.longitude.step() * latitude.to_radians().cos().abs()).max(stated.latitude.step()) * 3600.0;
+    let own = (stated.longitude.step() * latitude.to_radians().cos().abs())
+        .max(stated.latitude.step())
+        * 3600.0;
     let Some(distance) = places
         .iter()
         .map(|place| separation_deg(*place, said) * 3600.0)
@@ -181,7 +195,10 @@ fn other_system(case: &Case, stated: &StatedOther, out: &mut Findings) {
 /// Galactic longitude and latitude of an ICRS direction (ESA SP-1200, vol. 1, 1.5.3: pole 192.85948°, 27.12825°, node 32.93192°).
 fn galactic(icrs: Direction) -> Direction {
     let (pole_ra, pole_dec, node) = (192.859_48_f64, 27.128_25_f64.to_radians(), 32.931_92);
-    let (d, a) = (icrs.dec_deg.to_radians(), (icrs.ra_deg - pole_ra).to_radians());
+    let (d, a) = (
+        icrs.dec_deg.to_radians(),
+        (icrs.ra_deg - pole_ra).to_radians(),
+    );
     let sin_b = d.sin() * pole_dec.sin() + d.cos() * pole_dec.cos() * a.cos();
     let y = d.sin() * pole_dec.cos() - d.cos() * pole_dec.sin() * a.cos();
     let x = d.cos() * a.sin();

@@ -52,15 +52,19 @@ fn check(case: &Case, out: &mut Findings) {
         let negative = match position.kind {
             PositionKind::Equatorial => {
                 // +/- where a sign belongs says nothing of the value
-                value < 0.0 || angle.sign.is_some_and(|s| s.value == Sign::Minus && value == 0.0 && angle.is_negative())
+                value < 0.0
+                    || angle.sign.is_some_and(|s| {
+                        s.value == Sign::Minus && value == 0.0 && angle.is_negative()
+                    })
             }
             PositionKind::HourAngle => value <= -circle,
             PositionKind::Horizontal => value < -180.0,
         };
         // 23h 75m is a fault of its minutes, not of its hours
-        let beyond = value >= circle
-            && (angle.parts()[0].number.value() >= circle || !has_sixty(&angle));
-        if !negative && !beyond && position.kind != PositionKind::Equatorial && value.abs() > circle {
+        let beyond =
+            value >= circle && (angle.parts()[0].number.value() >= circle || !has_sixty(&angle));
+        if !negative && !beyond && position.kind != PositionKind::Equatorial && value.abs() > circle
+        {
             continue;
         }
         let what = match position.kind {
@@ -71,7 +75,10 @@ fn check(case: &Case, out: &mut Findings) {
         if negative {
             out.add(
                 angle.span,
-                format!("{} is negative; a {what} counts from 0 to {circle:.0} {unit_name}.", case.quote(angle.span)),
+                format!(
+                    "{} is negative; a {what} counts from 0 to {circle:.0} {unit_name}.",
+                    case.quote(angle.span)
+                ),
                 format!(
                     "Ask for the original; if it was counted backwards, it is {}.",
                     words::hours(value.rem_euclid(circle) * 360.0 / circle)

@@ -39,7 +39,10 @@ pub(super) const RULE: Rule = Rule {
 
 fn check(case: &Case, out: &mut Findings) {
     let report = case.report;
-    let site = report.site.iter().flat_map(|(s, _)| [s.latitude, s.longitude]);
+    let site = report
+        .site
+        .iter()
+        .flat_map(|(s, _)| [s.latitude, s.longitude]);
     let stated = report.stated_horizon.iter().map(|s| Some(s.angle));
     positions(report)
         .flat_map(|p| [p.first, p.second])
@@ -56,7 +59,9 @@ fn one(case: &Case, angle: &Angle, out: &mut Findings) {
             continue;
         }
         let advice = match value {
-            60.0 => format!("If a carry was not made, the {name} are 0 and the figure before them is one more."),
+            60.0 => format!(
+                "If a carry was not made, the {name} are 0 and the figure before them is one more."
+            ),
             _ if (60.0..100.0).contains(&value) && value % 10.0 < 6.0 => {
                 let turned = (value % 10.0).floor() as u32 * 10 + (value / 10.0).floor() as u32;
                 format!("Exchanged digits would give {turned:02}; ask for the original.")

@@ -38,26 +38,42 @@ pub(super) const RULE: Rule = Rule {
 };
 
 fn check(case: &Case, out: &mut Findings) {
-    let (Some((latitude, longitude)), Some(site)) = (case.meant.site_register_deg, &case.meant.site) else {
+    let (Some((latitude, longitude)), Some(site)) =
+        (case.meant.site_register_deg, &case.meant.site)
+    else {
         return;
     };
-    let Some((written, _)) = &case.report.site else { return };
+    let Some((written, _)) = &case.report.site else {
+        return;
+    };
     let span = match (written.latitude, written.longitude) {
         (Some(a), Some(b)) => a.span.cover(b.span),
         (Some(a), None) | (None, Some(a)) => a.span,
         (None, None) => written.span,
     };
-    let value = |angle: Option<crate::report::Angle>, otherwise: f64| angle.map_or(otherwise, |a| a.value());
+    let value = |angle: Option<crate::report::Angle>, otherwise: f64| {
+        angle.map_or(otherwise, |a| a.value())
+    };
     let apart_deg = separation_deg(
-        Direction { ra_deg: longitude, dec_deg: latitude },
         Direction {
-            ra_deg: value(written.longitude, site.longitude_deg) * if written.west_positive { -1.0 } else { 1.0 },
+            ra_deg: longitude,
+            dec_deg: latitude,
+        },
+        Direction {
+            ra_deg: value(written.longitude, site.longitude_deg)
+                * if written.west_positive { -1.0 } else { 1.0 },
             dec_deg: value(written.latitude, site.latitude_deg),
         },
     );
     let km = apart_deg * 111.2;
-    let distance = if km < 10.0 { format!("{km:.1} km") } else { format!("{km:.0} km") };
-    let compass = |deg: f64, plus: &str, minus: &str| format!("{:.2}° {}", deg.abs(), if deg < 0.0 { minus } else { plus });
+    let distance = if km < 10.0 {
+        format!("{km:.1} km")
+    } else {
+        format!("{km:.0} km")
+    };
+    let compass = |deg: f64, plus: &str, minus: &str| {
+        format!("{:.2}° {}", deg.abs(), if deg < 0.0 { minus } else { plus })
+    };
     out.add(
         span,
         format!(

@@ -41,8 +41,12 @@ fn check(case: &Case, out: &mut Findings) {
     if case.meant.site_trouble != Some(SiteTrouble::HemisphereUnclear) {
         return;
     }
-    let Some((site, _)) = &case.report.site else { return };
-    let plain = |angle: &Option<crate::report::Angle>| angle.filter(|a| a.sign.is_none() && a.compass.is_none());
+    let Some((site, _)) = &case.report.site else {
+        return;
+    };
+    let plain = |angle: &Option<crate::report::Angle>| {
+        angle.filter(|a| a.sign.is_none() && a.compass.is_none())
+    };
     let (latitude, longitude) = (plain(&site.latitude), plain(&site.longitude));
     let (span, what) = match (latitude, longitude) {
         (Some(a), Some(b)) => (a.span.cover(b.span), "north or south, east or west"),

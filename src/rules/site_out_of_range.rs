@@ -37,14 +37,22 @@ pub(super) const RULE: Rule = Rule {
 };
 
 fn check(case: &Case, out: &mut Findings) {
-    let Some((site, _)) = &case.report.site else { return };
+    let Some((site, _)) = &case.report.site else {
+        return;
+    };
     let mut said = false;
-    for (angle, most, what) in [(site.latitude, 90.0, "latitude"), (site.longitude, 360.0, "longitude")] {
+    for (angle, most, what) in [
+        (site.latitude, 90.0, "latitude"),
+        (site.longitude, 360.0, "longitude"),
+    ] {
         if let Some(angle) = angle.filter(|a| a.value().abs() > most) {
             said = true;
             out.add(
                 angle.span,
-                format!("{} cannot be a {what}: it goes to {most:.0}°.", case.quote(angle.span)),
+                format!(
+                    "{} cannot be a {what}: it goes to {most:.0}°.",
+                    case.quote(angle.span)
+                ),
                 "Ask for the site's coordinates.",
             );
         }

@@ -37,7 +37,13 @@ pub(super) const RULE: Rule = Rule {
 };
 
 fn check(case: &Case, out: &mut Findings) {
-    let Some(SiteTrouble::Unknown { nearest, have_register }) = &case.meant.site_trouble else { return };
+    let Some(SiteTrouble::Unknown {
+        nearest,
+        have_register,
+    }) = &case.meant.site_trouble
+    else {
+        return;
+    };
     let span = match &case.report.site {
         Some((site, _)) => site.name.as_ref().map_or(site.span, |name| name.span),
         None => case.report.position.span,
@@ -47,14 +53,23 @@ fn check(case: &Case, out: &mut Findings) {
         let advice = match nearest.as_slice() {
             [] => "Ask for its coordinates, or add it to the register.".to_string(),
             [one] => format!("Is it {one}? If not, ask for its coordinates."),
-            [all @ .., last] => format!("Is it {} or {last}? If not, ask for its coordinates.", all.join(", ")),
+            [all @ .., last] => format!(
+                "Is it {} or {last}? If not, ask for its coordinates.",
+                all.join(", ")
+            ),
         };
-        out.add(span, format!("The site {words} is not in the register."), advice);
+        out.add(
+            span,
+            format!("The site {words} is not in the register."),
+            advice,
+        );
     } else {
         out.add_as(
             Weight::Note,
             span,
-            format!("The site {words} has no coordinates, and this house has no register of sites."),
+            format!(
+                "The site {words} has no coordinates, and this house has no register of sites."
+            ),
             "Give its latitude and longitude, or start a register in colure.yaml.",
         );
     }

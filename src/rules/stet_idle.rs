@@ -57,16 +57,28 @@ pub(super) fn apply(
         for named in &stet.rules {
             let name = named.value.trim();
             let Some(rule) = find(name) else {
-                let likely = nearest(name).map_or("See `colure rulebook` for the names.".to_string(), |rule| {
-                    format!("Is it {}?", rule.name)
-                });
-                out.add(named.span, format!("{} is no rule.", case.quote(named.span)), likely);
-                continue;
-            };
-            if stet.reason.as_ref().is_none_or(|reason| reason.value.trim().is_empty()) {
+                let likely = nearest(name)
+                    .map_or("See `colure rulebook` for the names.".to_string(), |rule| {
+                        format!("Is it {}?", rule.name)
+                    });
                 out.add(
                     named.span,
-                    format!("The stet of {} gives no reason, so it lets nothing pass.", rule.name),
+                    format!("{} is no rule.", case.quote(named.span)),
+                    likely,
+                );
+                continue;
+            };
+            if stet
+                .reason
+                .as_ref()
+                .is_none_or(|reason| reason.value.trim().is_empty())
+            {
+                out.add(
+                    named.span,
+                    format!(
+                        "The stet of {} gives no reason, so it lets nothing pass.",
+                        rule.name
+                    ),
                     "Write the reason after a colon.",
                 );
                 continue;
@@ -75,10 +87,16 @@ pub(super) fn apply(
                 silenced = true;
                 continue;
             }
-            if !let_pass(findings, rule.name) && !gave_way.iter().any(|(from, _)| *from == rule.name) && !late(rule.name) {
+            if !let_pass(findings, rule.name)
+                && !gave_way.iter().any(|(from, _)| *from == rule.name)
+                && !late(rule.name)
+            {
                 out.add(
                     named.span,
-                    format!("The stet of {} let nothing pass: that rule found nothing here.", rule.name),
+                    format!(
+                        "The stet of {} let nothing pass: that rule found nothing here.",
+                        rule.name
+                    ),
                     "Take it out.",
                 );
             }
@@ -96,9 +114,16 @@ pub(super) fn apply_late(
     selection: &Selection,
     let_pass: &[&str],
 ) -> Vec<Finding> {
-    let Some(weight) = weight(&RULE, house, selection) else { return Vec::new() };
+    let Some(weight) = weight(&RULE, house, selection) else {
+        return Vec::new();
+    };
     let mut out = Findings::new(&RULE, Some(weight));
-    for named in report.stets.iter().filter(|s| s.reason.is_some()).flat_map(|s| &s.rules) {
+    for named in report
+        .stets
+        .iter()
+        .filter(|s| s.reason.is_some())
+        .flat_map(|s| &s.rules)
+    {
         let name = named.value.trim();
         if late(name) && !let_pass.contains(&name) {
             out.add(

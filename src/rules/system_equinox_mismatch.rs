@@ -39,7 +39,9 @@ pub(super) const RULE: Rule = Rule {
 
 fn check(case: &Case, out: &mut Findings) {
     for (tag, _) in &case.report.equinoxes {
-        let (Some(system), Some(EquinoxYear::Year { letter, year })) = (tag.value.system, tag.value.year) else {
+        let (Some(system), Some(EquinoxYear::Year { letter, year })) =
+            (tag.value.system, tag.value.year)
+        else {
             continue;
         };
         let besselian = words::is_besselian(letter, year.value());
@@ -47,13 +49,22 @@ fn check(case: &Case, out: &mut Findings) {
             continue;
         }
         let advice = match system {
-            SystemWord::Fk4 => "FK4 goes with B1950.0 and earlier: either the system is FK5 or ICRS, or the equinox is B1950.0.",
-            SystemWord::Fk5 => "FK5 goes with J2000.0: either the system is FK4, or the equinox is J2000.0.",
-            SystemWord::Icrs => "The ICRS has the axes of J2000.0: either the system is FK4, or the equinox is J2000.0.",
+            SystemWord::Fk4 => {
+                "FK4 goes with B1950.0 and earlier: either the system is FK5 or ICRS, or the equinox is B1950.0."
+            }
+            SystemWord::Fk5 => {
+                "FK5 goes with J2000.0: either the system is FK4, or the equinox is J2000.0."
+            }
+            SystemWord::Icrs => {
+                "The ICRS has the axes of J2000.0: either the system is FK4, or the equinox is J2000.0."
+            }
         };
         out.add(
             tag.span,
-            format!("{} joins a system and an equinox that do not belong together.", case.quote(tag.span)),
+            format!(
+                "{} joins a system and an equinox that do not belong together.",
+                case.quote(tag.span)
+            ),
             format!("{advice} Ask which."),
         );
         return;

@@ -38,14 +38,20 @@ pub(super) const RULE: Rule = Rule {
 };
 
 fn check(case: &Case, out: &mut Findings) {
-    let Some(InstantTrouble::ZoneDoubtful { why }) = &case.meant.instant_trouble else { return };
+    let Some(InstantTrouble::ZoneDoubtful { why }) = &case.meant.instant_trouble else {
+        return;
+    };
     let instant = case.report.instants.first().map(|(instant, _)| instant);
     let span = instant
         .and_then(|i| i.zone.as_ref().map(|zone| zone.span))
         .unwrap_or_else(|| case.when_span());
     out.add(
         span,
-        format!("{} does not settle the time: {}.", case.quote(span), why.trim_end_matches('.')),
+        format!(
+            "{} does not settle the time: {}.",
+            case.quote(span),
+            why.trim_end_matches('.')
+        ),
         "Ask for UT or for the offset from it.",
     );
 }

@@ -37,7 +37,9 @@ pub(super) const RULE: Rule = Rule {
 };
 
 fn check(case: &Case, out: &mut Findings) {
-    let Some((instant, _)) = case.report.instants.first() else { return };
+    let Some((instant, _)) = case.report.instants.first() else {
+        return;
+    };
     let span = instant.clock.map_or(instant.span, |clock| clock.span);
     match case.meant.instant_trouble {
         Some(InstantTrouble::ZoneMissing) => {
@@ -51,7 +53,10 @@ fn check(case: &Case, out: &mut Findings) {
             let span = instant.zone.as_ref().map_or(span, |zone| zone.span);
             out.add(
                 span,
-                format!("{} is said, and no zone is known for the site.", case.quote(span)),
+                format!(
+                    "{} is said, and no zone is known for the site.",
+                    case.quote(span)
+                ),
                 "Ask for UT, or give the site's zone beside it or in the register.",
             );
         }

@@ -17,29 +17,35 @@ pub struct Changed {
     pub lost: bool,
 }
 
-/// The angle with two neighbouring digits exchanged, within a part or across the blank between two parts.
+/// The angle with two neighbouring digits exchanged, within a part or across the mark between two parts.
 pub fn exchanged(angle: &Angle) -> impl Iterator<Item = Changed> + use<> {
     let mut list = Vec::new();
-    for part in 0..angle.parts().len() {
-        let number = angle.parts()[part].number;
-        let digits = usize::from(number.whole_digits) + usize::from(number.places);
-        for k in 0..digits.saturating_sub(1) as u32 {
-            let unit = 10u64.pow(k);
-            let (low, high) = (number.mantissa / unit % 10, number.mantissa / unit / 10 % 10);
-            if low == high {
-                continue;
-            }
-            let mut changed = *angle;
-            let m = &mut changed.parts_mut()[part].number.mantissa;
-            *m = *m - low * unit - high * unit * 10 + high * unit + low * unit * 10;
-            list.push(Changed {
-                angle: changed,
-                part,
-                place: 10f64.powi(k as i32 + 1 - i32::from(number.places)),
-                off_by: 0,
-                lost: false,
-            });
+    // every digit with its part and its place in that part, as they stand in a row
+    let mut row: Vec<(usize, u32, u64)> = Vec::new();
+    for (part, p) in angle.parts().iter().enumerate() {
+        let digits = u32::from(p.number.whole_digits) + u32::from(p.number.places);
+        for k in (0..digits.min(18)).rev() {
+            row.push((part, k, p.number.mantissa / 10u64.pow(k) % 10));
         }
+    }
+    for pair in row.windows(2) {
+        let [(part, k, left), (next, l, right)] = [pair[0], pair[1]];
+        if left == right {
+            continue;
+        }
+        let mut changed = *angle;
+        for (part, k, old, new) in [(part, k, left, right), (next, l, right, left)] {
+            let m = &mut changed.parts_mut()[part].number.mantissa;
+            *m = *m - old * 10u64.pow(k) + new * 10u64.pow(k);
+        }
+        let places = angle.parts()[part].number.places;
+        list.push(Changed {
+            angle: changed,
+            part,
+            place: 10f64.powi(k as i32 - i32::from(places)),
+            off_by: 0,
+            lost: false,
+        });
     }
     list.retain(in_range);
     list.into_iter()
@@ -56,7 +62,8 @@ pub fn miskeyed(angle: &Angle) -> impl Iterator<Item = Changed> + use<> {
             let old = number.mantissa / unit % 10;
             for new in (0..10).filter(|new| *new != old) {
                 let mut changed = *angle;
-                changed.parts_mut()[part].number.mantissa = number.mantissa - old * unit + new * unit;
+                changed.parts_mut()[part].number.mantissa =
+                    number.mantissa - old * unit + new * unit;
                 list.push(Changed {
                     angle: changed,
                     part,
@@ -88,5 +95,10 @@ pub fn miskeyed(angle: &Angle) -> impl Iterator<Item = Changed> + use<> {
 
 /// Minutes and seconds below 60.
 fn in_range(changed: &Changed) -> bool {
-    changed.angle.parts().iter().skip(1).all(|part| part.number.value() < 60.0)
+    changed
+        .angle
+        .parts()
+        .iter()
+        .skip(1)
+        .all(|part| part.number.value() < 60.0)
 }

@@ -2,9 +2,9 @@
 
 use super::readings::Reading;
 use crate::report::{HorizonQuantity, Meant};
+use crate::rules::Case;
 use crate::rules::identity::{here, named};
 use crate::rules::words::{self, apart, rough};
-use crate::rules::Case;
 use crate::sky::horizon::refraction_deg;
 use crate::sky::separation_deg;
 
@@ -27,13 +27,23 @@ pub fn weigh(case: &Case, sister: Option<(f64, usize)>) -> Facts {
     {
         let distance = separation_deg(icrs, expected.icrs) * 3600.0;
         // in a large object any place is as good as another; else the density of a bell with long tails
-        let width = step.max(3.0).max(expected.slack_arcsec / 3.0).max(expected.radius_arcsec / 2.0);
+        let width = step
+            .max(3.0)
+            .max(expected.slack_arcsec / 3.0)
+            .max(expected.radius_arcsec / 2.0);
         likelihood *= density(distance, width);
-        said.push(format!("it lies {} from {}", apart(distance), expected.name));
+        said.push(format!(
+            "it lies {} from {}",
+            apart(distance),
+            expected.name
+        ));
     }
     if let Some((distance, count)) = sister {
         likelihood *= density(distance, step.max(0.5));
-        said.push(format!("it agrees with {count} other reports to {}", apart(distance)));
+        said.push(format!(
+            "it agrees with {count} other reports to {}",
+            apart(distance)
+        ));
     }
     if let Some(horizon) = case.meant.horizon {
         let mut words = format!("the object stood {} high", rough(horizon.altitude_deg));
@@ -41,16 +51,22 @@ pub fn weigh(case: &Case, sister: Option<(f64, usize)>) -> Facts {
             words += " in a dark sky";
         }
         said.push(words);
-        let height = case.meant.site.as_ref().and_then(|s| s.elevation_m).unwrap_or(0.0);
+        let height = case
+            .meant
+            .site
+            .as_ref()
+            .and_then(|s| s.elevation_m)
+            .unwrap_or(0.0);
         for stated in &case.report.stated_horizon {
             let altitude = match stated.quantity {
                 HorizonQuantity::Altitude => stated.angle.value(),
                 HorizonQuantity::ZenithDistance => 90.0 - stated.angle.value(),
                 _ => continue,
             };
-            let off = (altitude - horizon.altitude_deg)
-                .abs()
-                .min((altitude - horizon.altitude_deg - refraction_deg(horizon.altitude_deg, height)).abs());
+            let off = (altitude - horizon.altitude_deg).abs().min(
+                (altitude - horizon.altitude_deg - refraction_deg(horizon.altitude_deg, height))
+                    .abs(),
+            );
             let width = stated.angle.step().max(0.5) / 2.0;
             likelihood *= (-0.5 * (off / width).powi(2)).exp().max(0.02);
             said.push("the stated altitude agrees".to_string());
@@ -67,7 +83,10 @@ pub fn weigh(case: &Case, sister: Option<(f64, usize)>) -> Facts {
         [one] => one.clone(),
         [all @ .., last] => format!("{} and {last}", all.join(", ")),
     };
-    Facts { likelihood, because }
+    Facts {
+        likelihood,
+        because,
+    }
 }
 
 /// A two-dimensional density with long tails, relative to one arcsecond squared.
@@ -77,8 +96,16 @@ fn density(distance: f64, width: f64) -> f64 {
 
 /// Is the site's zone one that its longitude could have? Zones reach some four hours from the mean Sun at most.
 pub fn zone_fits(meant: &Meant) -> bool {
-    let (Some(site), Some(instant)) = (&meant.site, meant.instant) else { return true };
-    let Some(offset) = site.zone.as_deref().and_then(|zone| offset_h(zone, instant.utc)) else { return true };
+    let (Some(site), Some(instant)) = (&meant.site, meant.instant) else {
+        return true;
+    };
+    let Some(offset) = site
+        .zone
+        .as_deref()
+        .and_then(|zone| offset_h(zone, instant.utc))
+    else {
+        return true;
+    };
     let apart = (offset * 15.0 - site.longitude_deg + 180.0).rem_euclid(360.0) - 180.0;
     apart.abs() <= 60.0
 }
@@ -94,10 +121,9 @@ fn offset_h(zone: &str, utc: (f64, f64)) -> Option<f64> {
 pub fn told(case: &Case, reading: &Reading, meant: &Meant) -> String {
     match (reading.kind, meant.instant) {
         ("local-for-universal", Some(instant)) => {
-            let offset = case
-                .meant
-                .instant
-                .map_or(0.0, |written| words::seconds_between(instant.utc, written.utc));
+            let offset = case.meant.instant.map_or(0.0, |written| {
+                words::seconds_between(instant.utc, written.utc)
+            });
             let minutes = (offset / 60.0).round() as i64;
             let sign = if minutes < 0 { '-' } else { '+' };
             format!(

@@ -33,13 +33,16 @@ struct Kept {
 pub(crate) fn explain(case: &Case, to: Frame, sisters: Option<&Sisters>) -> Vec<Slip> {
     let trial = Case { text: "", ..*case };
     let broken = of_place_and_time(&trial);
-    let outlying = sisters.is_some_and(|s| matches!(s.agrees(case.report, case.meant), Some((false, _))));
+    let outlying =
+        sisters.is_some_and(|s| matches!(s.agrees(case.report, case.meant), Some((false, _))));
     if broken.is_empty() && !outlying && case.meant.read.is_some() {
         return Vec::new();
     }
     let sieve = sieve::Sieve::new(case, sisters);
     let mut kept = Vec::new();
-    let singles = singles(case, &broken, outlying);
+    let step = case.meant.reduced.map_or(0.0, |r| r.step_arcsec);
+    let still = outlying && sisters.is_some_and(|s| !s.move_beyond(step));
+    let singles = singles(case, &broken, outlying, still);
     for reading in &singles {
         if sieve.passes(reading)
             && let Some(reading) = hold(case, vec![reading.kind], reading, sisters)
@@ -60,9 +63,11 @@ pub(crate) fn explain(case: &Case, to: Frame, sisters: Option<&Sisters>) -> Vec<
 }
 
 /// Single readings of the kinds that can mend what is broken: another time does not move a star into its constellation.
-fn singles(case: &Case, broken: &[Finding], outlying: bool) -> Vec<Reading> {
+fn singles(case: &Case, broken: &[Finding], outlying: bool, still: bool) -> Vec<Reading> {
     let can = |changes: Changes| {
-        broken.iter().all(|f| mends(changes, f.rule)) && (!outlying || changes != Changes::Site)
+        broken.iter().all(|f| mends(changes, f.rule))
+            && !(outlying && changes == Changes::Site)
+            && !(still && changes == Changes::Time)
     };
     let mut list = Vec::new();
     if can(Changes::Time) {
@@ -84,9 +89,11 @@ fn mends(changes: Changes, rule: &str) -> bool {
             changes == Changes::Time || (rule == "daylight" && changes == Changes::Site)
         }
         "site-out-of-range" | "site-disagrees" => changes == Changes::Site,
-        "ra-out-of-range" | "dec-out-of-range" | "sexagesimal-out-of-range" | "position-disagrees" | "constellation-disagrees" => {
-            changes == Changes::Place
-        }
+        "ra-out-of-range"
+        | "dec-out-of-range"
+        | "sexagesimal-out-of-range"
+        | "position-disagrees"
+        | "constellation-disagrees" => changes == Changes::Place,
         "near-sun" => changes != Changes::Site,
         // a star's place asks no time, a planet's does; the check itself tells them apart
         "object-elsewhere" => changes != Changes::Site,
@@ -105,7 +112,11 @@ fn pairs(case: &Case, broken: &[Finding], outlying: bool) -> Vec<(Vec<&'static s
     firsts.extend(readings::of_place(case).into_iter().filter(common_places));
     for (k, first) in firsts.iter().enumerate() {
         let meant = case.mean(&first.report);
-        let changed = Case { report: &first.report, meant: &meant, ..*case };
+        let changed = Case {
+            report: &first.report,
+            meant: &meant,
+            ..*case
+        };
         let seconds = match first.changes {
             Changes::Time => [readings::of_site(&changed), readings::of_place(&changed)].concat(),
             Changes::Site => [readings::of_site(&changed), readings::of_place(&changed)].concat(),
@@ -117,7 +128,11 @@ fn pairs(case: &Case, broken: &[Finding], outlying: bool) -> Vec<(Vec<&'static s
         });
         for second in seconds.filter(common_places) {
             // each pair once, and no slip twice
-            if second.kind == first.kind || firsts[..k].iter().any(|f| f.kind == second.kind && f.changes == first.changes) {
+            if second.kind == first.kind
+                || firsts[..k]
+                    .iter()
+                    .any(|f| f.kind == second.kind && f.changes == first.changes)
+            {
                 continue;
             }
             let reading = Reading {
@@ -132,15 +147,29 @@ fn pairs(case: &Case, broken: &[Finding], outlying: bool) -> Vec<(Vec<&'static s
 }
 
 /// Holds a reading to every stated fact: kept with its score, or nothing.
-fn hold(case: &Case, kinds: Vec<&'static str>, reading: &Reading, sisters: Option<&Sisters>) -> Option<Kept> {
+fn hold(
+    case: &Case,
+    kinds: Vec<&'static str>,
+    reading: &Reading,
+    sisters: Option<&Sisters>,
+) -> Option<Kept> {
     let meant = case.mean(&reading.report);
     meant.reduced?;
     // what was known of time and site must not be lost by the change
-    if (case.meant.instant.is_some() && meant.instant.is_none()) || (case.meant.site.is_some() && meant.site.is_none()) {
+    if (case.meant.instant.is_some() && meant.instant.is_none())
+        || (case.meant.site.is_some() && meant.site.is_none())
+    {
         return None;
     }
-    let changed = Case { report: &reading.report, meant: &meant, text: "", ..*case };
-    if !of_place_and_time(&changed).is_empty() || meant.instant_trouble.is_some() && case.meant.instant_trouble.is_none() {
+    let changed = Case {
+        report: &reading.report,
+        meant: &meant,
+        text: "",
+        ..*case
+    };
+    if !of_place_and_time(&changed).is_empty()
+        || meant.instant_trouble.is_some() && case.meant.instant_trouble.is_none()
+    {
         return None;
     }
     let sister = match sisters.map(|s| s.agrees(&reading.report, &meant)) {
@@ -163,8 +192,15 @@ fn hold(case: &Case, kinds: Vec<&'static str>, reading: &Reading, sisters: Optio
 
 /// The best of those kept, with their shares.
 fn offer(case: &Case, mut kept: Vec<Kept>, to: Frame) -> Vec<Slip> {
-    kept.sort_by(|a, b| b.score.total_cmp(&a.score).then_with(|| a.reading.words.cmp(&b.reading.words)));
+    kept.sort_by(|a, b| {
+        b.score
+            .total_cmp(&a.score)
+            .then_with(|| a.reading.words.cmp(&b.reading.words))
+    });
     kept.truncate(MOST);
+    // what is a hundred times less likely than the best is no help to an editor
+    let least = kept.first().map_or(0.0, |best| best.score / 100.0);
+    kept.retain(|k| k.score >= least);
     let sum: f64 = kept.iter().map(|k| k.score).sum();
     kept.into_iter()
         .map(|k| {
@@ -173,7 +209,11 @@ fn offer(case: &Case, mut kept: Vec<Kept>, to: Frame) -> Vec<Slip> {
             Slip {
                 because: format!("If {}, {}.", evidence::clause(&k.kinds), k.because),
                 reading: words,
-                weight: if sum > 0.0 { k.score / sum } else { 1.0 / name.len().max(1) as f64 },
+                weight: if sum > 0.0 {
+                    k.score / sum
+                } else {
+                    1.0 / name.len().max(1) as f64
+                },
                 becomes: becomes(case, &k, to),
                 kinds: k.kinds,
             }

@@ -62,7 +62,8 @@ pub struct Directions {
 pub fn priors() -> &'static Priors {
     static PRIORS: OnceLock<Priors> = OnceLock::new();
     PRIORS.get_or_init(|| {
-        serde_yaml::from_str(include_str!("priors.yaml")).expect("priors.yaml is part of the build and tested")
+        serde_yaml::from_str(include_str!("priors.yaml"))
+            .expect("priors.yaml is part of the build and tested")
     })
 }
 

@@ -3,7 +3,8 @@
 use super::digits;
 use super::priors::priors;
 use crate::report::{
-    Angle, AngleUnit, DateWritten, EquinoxYear, Mark, Nearness, Position, PositionKind, Report, Zone,
+    Angle, AngleUnit, DateWritten, EquinoxYear, Mark, Nearness, Position, PositionKind, Report,
+    Zone,
 };
 use crate::rules::words::{self, civil, day_number};
 use crate::rules::{Case, angles};
@@ -67,9 +68,17 @@ pub fn of_site(case: &Case) -> Vec<Reading> {
     let mut list = Vec::new();
     for kind in ["east-for-west", "north-for-south"] {
         let mut report = case.report.clone();
-        let Some((site, _)) = report.site.as_mut() else { continue };
-        let angle = if kind == "east-for-west" { &mut site.longitude } else { &mut site.latitude };
-        let Some(angle) = angle.as_mut() else { continue };
+        let Some((site, _)) = report.site.as_mut() else {
+            continue;
+        };
+        let angle = if kind == "east-for-west" {
+            &mut site.longitude
+        } else {
+            &mut site.latitude
+        };
+        let Some(angle) = angle.as_mut() else {
+            continue;
+        };
         let before = case.quote(angle.span);
         *angle = angles::negated(angle);
         let side = match (kind, angle.is_negative()) {
@@ -97,7 +106,11 @@ pub fn of_site(case: &Case) -> Vec<Reading> {
 }
 
 fn site_value(site: &crate::report::SiteWritten, kind: &str) -> f64 {
-    let angle = if kind == "east-for-west" { site.longitude } else { site.latitude };
+    let angle = if kind == "east-for-west" {
+        site.longitude
+    } else {
+        site.latitude
+    };
     angle.map_or(0.0, |a| a.value())
 }
 
@@ -110,32 +123,54 @@ fn share(readings: &mut [Reading]) {
 }
 
 fn place(kind: &'static str, prior: f64, report: Report, words: String) -> Reading {
-    Reading { kind, prior, changes: Changes::Place, report, words }
+    Reading {
+        kind,
+        prior,
+        changes: Changes::Place,
+        report,
+        words,
+    }
 }
 
 /// A position's two angles in words.
 fn written(position: &Position) -> String {
-    let hours = position.kind != PositionKind::Horizontal && angles::first_unit(position) == Some(AngleUnit::Hours);
-    let first = position.first.map_or(String::new(), |a| words::angle(&a, hours));
-    let second = position.second.map_or(String::new(), |a| words::angle(&a, false));
+    let hours = position.kind != PositionKind::Horizontal
+        && angles::first_unit(position) == Some(AngleUnit::Hours);
+    let first = position
+        .first
+        .map_or(String::new(), |a| words::angle(&a, hours));
+    let second = position
+        .second
+        .map_or(String::new(), |a| words::angle(&a, false));
     format!("{first} {second}")
 }
 
 fn dec_sign(report: &Report, list: &mut Vec<Reading>) {
-    let Some(angle) = report.position.second else { return };
-    if report.position.kind == PositionKind::Horizontal || report.position.polar_distance || angle.value() == 0.0 {
+    let Some(angle) = report.position.second else {
+        return;
+    };
+    if report.position.kind == PositionKind::Horizontal
+        || report.position.polar_distance
+        || angle.value() == 0.0
+    {
         return;
     }
     let mut other = report.clone();
     let turned = angles::negated(&angle);
     other.position.second = Some(turned);
-    let words = format!("{} read as {}", words::angle(&angle, false), words::angle(&turned, false));
+    let words = format!(
+        "{} read as {}",
+        words::angle(&angle, false),
+        words::angle(&turned, false)
+    );
     list.push(place("dec-sign", priors().of("dec-sign"), other, words));
 }
 
 fn ra_unit(report: &Report, list: &mut Vec<Reading>) {
     let position = &report.position;
-    let (Some(angle), Some(unit)) = (position.first, angles::first_unit(position)) else { return };
+    let (Some(angle), Some(unit)) = (position.first, angles::first_unit(position)) else {
+        return;
+    };
     if position.kind != PositionKind::Equatorial {
         return;
     }
@@ -156,7 +191,9 @@ fn ra_unit(report: &Report, list: &mut Vec<Reading>) {
 
 fn ra_dec_exchanged(report: &Report, list: &mut Vec<Reading>) {
     let position = &report.position;
-    let (Some(first), Some(second)) = (position.first, position.second) else { return };
+    let (Some(first), Some(second)) = (position.first, position.second) else {
+        return;
+    };
     if position.kind != PositionKind::Equatorial || position.polar_distance {
         return;
     }
@@ -181,7 +218,12 @@ fn ra_dec_exchanged(report: &Report, list: &mut Vec<Reading>) {
         other.position.first_unit = Some(AngleUnit::Hours);
     }
     let words = format!("{} read as {}", written(position), written(&other.position));
-    list.push(place("ra-dec-exchanged", priors().of("ra-dec-exchanged"), other, words));
+    list.push(place(
+        "ra-dec-exchanged",
+        priors().of("ra-dec-exchanged"),
+        other,
+        words,
+    ));
 }
 
 fn equinox_other(case: &Case, list: &mut Vec<Reading>) {
@@ -208,7 +250,12 @@ fn equinox_other(case: &Case, list: &mut Vec<Reading>) {
         };
         let mut other = report.clone();
         other.equinoxes = vec![(Spanned::new(tag, report.position.span), Nearness::Own)];
-        list.push(place("equinox-other", factor, other, format!("{name} in place of {before}")));
+        list.push(place(
+            "equinox-other",
+            factor,
+            other,
+            format!("{name} in place of {before}"),
+        ));
     }
     share(&mut list[at..]);
 }
@@ -216,7 +263,9 @@ fn equinox_other(case: &Case, list: &mut Vec<Reading>) {
 fn hour_angle_for_ra(report: &Report, list: &mut Vec<Reading>) {
     let position = &report.position;
     let Some(angle) = position.first else { return };
-    if position.kind != PositionKind::Equatorial || angles::first_unit(position) != Some(AngleUnit::Hours) {
+    if position.kind != PositionKind::Equatorial
+        || angles::first_unit(position) != Some(AngleUnit::Hours)
+    {
         return;
     }
     let mut other = report.clone();
@@ -224,15 +273,27 @@ fn hour_angle_for_ra(report: &Report, list: &mut Vec<Reading>) {
     other.position.first_unit = Some(AngleUnit::Hours);
     other.equinoxes.clear();
     let words = format!("{} read as an hour angle", words::angle(&angle, true));
-    list.push(place("hour-angle-for-ra", priors().of("hour-angle-for-ra"), other, words));
+    list.push(place(
+        "hour-angle-for-ra",
+        priors().of("hour-angle-for-ra"),
+        other,
+        words,
+    ));
 }
 
 /// Digits of a coordinate exchanged or miskeyed, with priors by what the digit counts; the caller shares them out.
 fn changed_digits(report: &Report, kind: &'static str, list: &mut Vec<Reading>) {
     let position = &report.position;
-    let hours = position.kind != PositionKind::Horizontal && angles::first_unit(position) == Some(AngleUnit::Hours);
+    let hours = position.kind != PositionKind::Horizontal
+        && angles::first_unit(position) == Some(AngleUnit::Hours);
     for axis in 0..2 {
-        let Some(angle) = (if axis == 0 { position.first } else { position.second }) else { continue };
+        let Some(angle) = (if axis == 0 {
+            position.first
+        } else {
+            position.second
+        }) else {
+            continue;
+        };
         let changes: Box<dyn Iterator<Item = digits::Changed>> = if kind == "digits-exchanged" {
             Box::new(digits::exchanged(&angle))
         } else {
@@ -260,7 +321,12 @@ fn changed_digits(report: &Report, kind: &'static str, list: &mut Vec<Reading>) 
                 words::angle(&angle, in_hours),
                 words::angle(&changed.angle, in_hours)
             );
-            list.push(place(kind, likelihood(&changed, axis, in_hours), other, words));
+            list.push(place(
+                kind,
+                likelihood(&changed, axis, in_hours),
+                other,
+                words,
+            ));
         }
     }
 }
@@ -281,27 +347,49 @@ fn likelihood(changed: &digits::Changed, axis: usize, in_hours: bool) -> f64 {
         (_, _, 1) => d.minutes_of_arc,
         _ => d.seconds_of_arc,
     };
-    by_place * if changed.off_by == 1 { priors().off_by_one } else { 1.0 }
+    by_place
+        * if changed.off_by == 1 {
+            priors().off_by_one
+        } else {
+            1.0
+        }
 }
 
 fn time(kind: &'static str, prior: f64, report: Report, words: String) -> Reading {
-    Reading { kind, prior, changes: Changes::Time, report, words }
+    Reading {
+        kind,
+        prior,
+        changes: Changes::Time,
+        report,
+        words,
+    }
 }
 
 /// Is the governing clock time said, or taken, to be UT?
 fn is_universal(zone: Option<&Zone>) -> bool {
-    matches!(zone, None | Some(Zone::Universal | Zone::Ut1 | Zone::Offset(0)))
+    matches!(
+        zone,
+        None | Some(Zone::Universal | Zone::Ut1 | Zone::Offset(0))
+    )
 }
 
 fn zones(case: &Case, list: &mut Vec<Reading>) {
-    let Some((instant, _)) = case.report.instants.first() else { return };
+    let Some((instant, _)) = case.report.instants.first() else {
+        return;
+    };
     let universal = is_universal(instant.zone.as_ref().map(|z| &z.value));
     let of_site = case
         .report
         .site
         .as_ref()
         .and_then(|(site, _)| site.zone.as_ref().map(|z| z.value.clone()))
-        .or_else(|| case.meant.site.as_ref().and_then(|s| s.zone.clone()).map(Zone::Named));
+        .or_else(|| {
+            case.meant
+                .site
+                .as_ref()
+                .and_then(|s| s.zone.clone())
+                .map(Zone::Named)
+        });
     let (kind, zone) = match (universal, of_site) {
         (true, Some(zone)) => ("local-for-universal", zone),
         (false, _) => ("universal-for-local", Zone::Universal),
@@ -323,7 +411,14 @@ fn zones(case: &Case, list: &mut Vec<Reading>) {
 /// A calendar date some days on; `None` where it is a Julian date or no date.
 fn days_on(date: &DateWritten, days: i64) -> Option<DateWritten> {
     match *date {
-        DateWritten::Calendar { year, year_digits, month, mut day, to_day, order_unclear } => {
+        DateWritten::Calendar {
+            year,
+            year_digits,
+            month,
+            mut day,
+            to_day,
+            order_unclear,
+        } => {
             if !(1..=12).contains(&month) {
                 return None;
             }
@@ -352,48 +447,78 @@ fn days_on(date: &DateWritten, days: i64) -> Option<DateWritten> {
 /// A date in words.
 fn date_words(date: &DateWritten) -> String {
     match *date {
-        DateWritten::Calendar { year, month, day, .. } => {
-            format!("{year:04}-{month:02}-{:02.*}", usize::from(day.places), day.value())
+        DateWritten::Calendar {
+            year, month, day, ..
+        } => {
+            format!(
+                "{year:04}-{month:02}-{:02.*}",
+                usize::from(day.places),
+                day.value()
+            )
         }
-        DateWritten::Julian { number, .. } => format!("JD {:.*}", usize::from(number.places), number.value()),
+        DateWritten::Julian { number, .. } => {
+            format!("JD {:.*}", usize::from(number.places), number.value())
+        }
     }
 }
 
 fn day_off(report: &Report, list: &mut Vec<Reading>) {
-    let Some(date) = report.instants.first().and_then(|(i, _)| i.date) else { return };
+    let Some(date) = report.instants.first().and_then(|(i, _)| i.date) else {
+        return;
+    };
     let at = list.len();
     for (days, factor) in [(1, 1.0), (-1, priors().directions.day_too_late)] {
-        let Some(changed) = days_on(&date.value, days) else { continue };
+        let Some(changed) = days_on(&date.value, days) else {
+            continue;
+        };
         let mut other = report.clone();
         other.instants[0].0.date = Some(Spanned::new(changed, date.span));
         list.push(time(
             "day-off",
             factor,
             other,
-            format!("{} read as {}", date_words(&date.value), date_words(&changed)),
+            format!(
+                "{} read as {}",
+                date_words(&date.value),
+                date_words(&changed)
+            ),
         ));
     }
     share(&mut list[at..]);
 }
 
 fn am_for_pm(report: &Report, list: &mut Vec<Reading>) {
-    let Some(clock) = report.instants.first().and_then(|(i, _)| i.clock) else { return };
+    let Some(clock) = report.instants.first().and_then(|(i, _)| i.clock) else {
+        return;
+    };
     let hour = clock.hour.value();
     if clock.hour.places > 0 || hour >= 24.0 {
         return;
     }
     let mut other = report.clone();
-    let Some(changed) = other.instants[0].0.clock.as_mut() else { return };
+    let Some(changed) = other.instants[0].0.clock.as_mut() else {
+        return;
+    };
     let words = match clock.pm {
         Some(pm) => {
             changed.pm = Some(!pm);
-            format!("{} read as {}", if pm { "pm" } else { "am" }, if pm { "am" } else { "pm" })
+            format!(
+                "{} read as {}",
+                if pm { "pm" } else { "am" },
+                if pm { "am" } else { "pm" }
+            )
         }
         None => {
-            let turned = if hour < 12.0 { hour + 12.0 } else { hour - 12.0 };
+            let turned = if hour < 12.0 {
+                hour + 12.0
+            } else {
+                hour - 12.0
+            };
             changed.hour.mantissa = turned as u64;
             changed.hour.whole_digits = 2;
-            let minute = clock.minute.map_or(String::new(), |m| format!(":{:02.0}", m.value().floor()));
+            let minute = clock
+                .minute
+                .map_or(String::new(), |m| format!(":{:02.0}", m.value().floor()));
             format!("{hour:02.0}{minute} read as {turned:02.0}{minute}")
         }
     };
@@ -401,11 +526,17 @@ fn am_for_pm(report: &Report, list: &mut Vec<Reading>) {
 }
 
 fn month_misread(report: &Report, list: &mut Vec<Reading>) {
-    let Some(date) = report.instants.first().and_then(|(i, _)| i.date) else { return };
+    let Some(date) = report.instants.first().and_then(|(i, _)| i.date) else {
+        return;
+    };
     let at = list.len();
     let mut push = |changed: Report, factor: f64| {
         if let Some(now) = changed.instants[0].0.date {
-            let words = format!("{} read as {}", date_words(&date.value), date_words(&now.value));
+            let words = format!(
+                "{} read as {}",
+                date_words(&date.value),
+                date_words(&now.value)
+            );
             list.push(time("month-misread", factor, changed, words));
         }
     };
@@ -415,7 +546,12 @@ fn month_misread(report: &Report, list: &mut Vec<Reading>) {
     for step in [-1i64, 1] {
         let mut other = report.clone();
         if let Some(written) = other.instants[0].0.date.as_mut()
-            && let DateWritten::Calendar { year, month, to_day: None, .. } = &mut written.value
+            && let DateWritten::Calendar {
+                year,
+                month,
+                to_day: None,
+                ..
+            } = &mut written.value
             && (1..=12).contains(month)
         {
             let next = i64::from(*month) + step;

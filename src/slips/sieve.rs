@@ -28,7 +28,8 @@ impl Sieve {
         let equatorial = case.report.position.kind == PositionKind::Equatorial;
         let frame = read.and_then(|r| r.frame);
         let on_icrs = frame.is_some_and(|f| {
-            matches!(f.system, System::Icrs | System::Fk5 | System::Mean) && f.equinox == Equinox::Julian(2000.0)
+            matches!(f.system, System::Icrs | System::Fk5 | System::Mean)
+                && f.equinox == Equinox::Julian(2000.0)
         });
         let altitudes = case
             .report
@@ -43,7 +44,9 @@ impl Sieve {
         Sieve {
             first_deg: read.map_or(0.0, |r| r.first_deg),
             second_deg: read.map_or(0.0, |r| r.second_deg),
-            icrs: meant.reduced.map_or((0.0, 0.0), |r| (r.icrs_ra_deg, r.icrs_dec_deg)),
+            icrs: meant
+                .reduced
+                .map_or((0.0, 0.0), |r| (r.icrs_ra_deg, r.icrs_dec_deg)),
             hour_angle_deg: meant.horizon.map(|h| h.hour_angle_h * 15.0),
             latitude_deg: meant.site.as_ref().map_or(0.0, |s| s.latitude_deg),
             altitudes,
@@ -60,10 +63,23 @@ impl Sieve {
             return true;
         }
         let position = &reading.report.position;
-        let (Some(first), Some(second)) = (position.first, position.second) else { return true };
-        let scale = if angles::first_unit(position) == Some(AngleUnit::Hours) { 15.0 } else { 1.0 };
-        let second_deg = if position.polar_distance { 90.0 - second.value() } else { second.value() };
-        let (d_first, d_second) = (first.value() * scale - self.first_deg, second_deg - self.second_deg);
+        let (Some(first), Some(second)) = (position.first, position.second) else {
+            return true;
+        };
+        let scale = if angles::first_unit(position) == Some(AngleUnit::Hours) {
+            15.0
+        } else {
+            1.0
+        };
+        let second_deg = if position.polar_distance {
+            90.0 - second.value()
+        } else {
+            second.value()
+        };
+        let (d_first, d_second) = (
+            first.value() * scale - self.first_deg,
+            second_deg - self.second_deg,
+        );
         if let Some(hour_angle) = self.hour_angle_deg {
             // precession turns the axes by less than a degree within a lifetime of the equinox: two degrees are lenient
             let (h, d, phi) = (
@@ -71,8 +87,16 @@ impl Sieve {
                 (self.icrs.1 + d_second).clamp(-90.0, 90.0).to_radians(),
                 self.latitude_deg.to_radians(),
             );
-            let altitude = (phi.sin() * d.sin() + phi.cos() * d.cos() * h.cos()).clamp(-1.0, 1.0).asin().to_degrees();
-            if altitude < -3.0 || self.altitudes.iter().any(|(said, step)| (said - altitude).abs() > 3.0 + step) {
+            let altitude = (phi.sin() * d.sin() + phi.cos() * d.cos() * h.cos())
+                .clamp(-1.0, 1.0)
+                .asin()
+                .to_degrees();
+            if altitude < -3.0
+                || self
+                    .altitudes
+                    .iter()
+                    .any(|(said, step)| (said - altitude).abs() > 3.0 + step)
+            {
                 return false;
             }
         }

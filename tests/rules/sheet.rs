@@ -44,7 +44,9 @@ fn report(text: &str, start: usize, end: usize) -> Option<Report> {
     // a first pass for the position, so that lines above it have somewhere to go
     for line in text[start..end].split_inclusive('\n') {
         let body = line.trim_end();
-        if report.is_none() && let Some((position, tag)) = position_line(text, at, body) {
+        if report.is_none()
+            && let Some((position, tag)) = position_line(text, at, body)
+        {
             report = Some(Report {
                 ordinal: 1,
                 position,
@@ -72,13 +74,23 @@ fn report(text: &str, start: usize, end: usize) -> Option<Report> {
     at = start;
     for line in text[start..end].split_inclusive('\n') {
         let body = line.trim_end();
-        let here = |word: &str| body.strip_prefix(word).map(|rest| at + body.len() - rest.len() + (rest.len() - rest.trim_start().len()));
+        let here = |word: &str| {
+            body.strip_prefix(word)
+                .map(|rest| at + body.len() - rest.len() + (rest.len() - rest.trim_start().len()))
+        };
         let to = at + body.len();
         if let Some(from) = here("Object:") {
             let name = &text[from..to];
             object = Some(Spanned::new(name.to_string(), Span::new(from, to)));
             let lower = name.to_lowercase();
-            for word in ["nova", "suspect", "unknown", "candidate", "transient", "new"] {
+            for word in [
+                "nova",
+                "suspect",
+                "unknown",
+                "candidate",
+                "transient",
+                "new",
+            ] {
                 if let Some(k) = lower.find(word) {
                     claims_new.get_or_insert(Span::new(from + k, from + k + word.len()));
                 }
@@ -90,19 +102,34 @@ fn report(text: &str, start: usize, end: usize) -> Option<Report> {
         } else if let Some(from) = here("Site:") {
             report.site = site(text, from, to).map(|s| (s, Nearness::Own));
         } else if let Some(from) = here("Constellation:").or(here("Constellation")) {
-            report.constellation = constellation(&text[from..to]).map(|c| Spanned::new(c, Span::new(from, to)));
+            report.constellation =
+                constellation(&text[from..to]).map(|c| Spanned::new(c, Span::new(from, to)));
         } else if let Some(from) = here("Altitude") {
             let (angle, _) = angle(text, from, to)?;
-            report.stated_horizon.push(StatedHorizon { quantity: HorizonQuantity::Altitude, angle });
+            report.stated_horizon.push(StatedHorizon {
+                quantity: HorizonQuantity::Altitude,
+                angle,
+            });
         } else if let Some(from) = here("Azimuth") {
             let (angle, _) = angle(text, from, to)?;
-            report.stated_horizon.push(StatedHorizon { quantity: HorizonQuantity::Azimuth, angle });
+            report.stated_horizon.push(StatedHorizon {
+                quantity: HorizonQuantity::Azimuth,
+                angle,
+            });
         } else if let Some(from) = here("Equinox") {
-            report.equinoxes.extend(tag(text, from, to).map(|t| (t, Nearness::Block)));
+            report
+                .equinoxes
+                .extend(tag(text, from, to).map(|t| (t, Nearness::Block)));
         } else if let Some(from) = here("Observer:") {
-            report.observer = Some(Spanned::new(text[from..to].to_string(), Span::new(from, to)));
+            report.observer = Some(Spanned::new(
+                text[from..to].to_string(),
+                Span::new(from, to),
+            ));
         } else if let Some(from) = here("Magnitude") {
-            report.magnitude = text[from..to].parse().ok().map(|m| Spanned::new(m, Span::new(from, to)));
+            report.magnitude = text[from..to]
+                .parse()
+                .ok()
+                .map(|m| Spanned::new(m, Span::new(from, to)));
         } else if body.starts_with("[stet ") {
             report.stets.push(stet(text, at, to));
         } else if let Some(from) = here("(that is") {
@@ -110,9 +137,15 @@ fn report(text: &str, start: usize, end: usize) -> Option<Report> {
             report.other_forms.push((form, None));
         } else if let Some(from) = here("(galactic") {
             let (longitude, next) = angle(text, from, to)?;
-            let next = next + text[next..to].find(|c: char| c.is_ascii_digit() || "+-−".contains(c))?;
+            let next =
+                next + text[next..to].find(|c: char| c.is_ascii_digit() || "+-−".contains(c))?;
             let (latitude, next) = angle(text, next, to)?;
-            report.stated_other.push(StatedOther { galactic: true, longitude, latitude, span: Span::new(from, next) });
+            report.stated_other.push(StatedOther {
+                galactic: true,
+                longitude,
+                latitude,
+                span: Span::new(from, next),
+            });
         }
         at += line.len();
     }
@@ -141,7 +174,11 @@ fn constellation(words: &str) -> Option<&'static str> {
 }
 
 /// A line that begins with a label RA or a digit holds a position; a tag may follow in brackets.
-fn position_line(text: &str, at: usize, body: &str) -> Option<(Position, Option<Spanned<EquinoxTag>>)> {
+fn position_line(
+    text: &str,
+    at: usize,
+    body: &str,
+) -> Option<(Position, Option<Spanned<EquinoxTag>>)> {
     let from = if body.starts_with("RA ") {
         at + 3
     } else if body.starts_with("HA ") {
@@ -156,14 +193,21 @@ fn position_line(text: &str, at: usize, body: &str) -> Option<(Position, Option<
     if body.starts_with("HA ") {
         found.kind = PositionKind::HourAngle;
     }
-    let tag = text[next..to].find('(').and_then(|k| tag(text, next + k, to));
+    let tag = text[next..to]
+        .find('(')
+        .and_then(|k| tag(text, next + k, to));
     Some((found, tag))
 }
 
 fn position(text: &str, from: usize, to: usize) -> Option<(Position, usize)> {
     let (first, mut next) = angle(text, from, to)?;
     let rest = &text[next..to];
-    let skip = rest.len() - rest.trim_start_matches([' ', ',']).trim_start_matches("Dec").trim_start().len();
+    let skip = rest.len()
+        - rest
+            .trim_start_matches([' ', ','])
+            .trim_start_matches("Dec")
+            .trim_start()
+            .len();
     let second = angle(text, next + skip, to);
     if let Some((_, end)) = second {
         next = end;
@@ -200,14 +244,30 @@ fn number(text: &str, from: usize, to: usize) -> Option<(Number, usize)> {
         match c.to_digit(10) {
             Some(d) => {
                 mantissa = mantissa.checked_mul(10)?.checked_add(u64::from(d))?;
-                if point { places += 1 } else { whole_digits += 1 }
+                if point {
+                    places += 1
+                } else {
+                    whole_digits += 1
+                }
             }
-            None if c == '.' && !point && text[end + 1..to].starts_with(|c: char| c.is_ascii_digit()) => point = true,
+            None if c == '.'
+                && !point
+                && text[end + 1..to].starts_with(|c: char| c.is_ascii_digit()) =>
+            {
+                point = true
+            }
             None => break,
         }
         end += c.len_utf8();
     }
-    (end > from).then_some((Number { mantissa, places, whole_digits }, end))
+    (end > from).then_some((
+        Number {
+            mantissa,
+            places,
+            whole_digits,
+        },
+        end,
+    ))
 }
 
 /// A sign, one to three parts with their marks, perhaps a compass letter.
@@ -215,21 +275,32 @@ fn angle(text: &str, from: usize, to: usize) -> Option<(Angle, usize)> {
     let mut at = from;
     let mut sign = None;
     if let Some(c) = text[at..to].chars().next().filter(|c| "+-−".contains(*c)) {
-        sign = Some(Spanned::new(if c == '+' { Sign::Plus } else { Sign::Minus }, Span::new(at, at + c.len_utf8())));
+        sign = Some(Spanned::new(
+            if c == '+' { Sign::Plus } else { Sign::Minus },
+            Span::new(at, at + c.len_utf8()),
+        ));
         at += c.len_utf8();
     }
     let start = sign.map_or(at, |s| s.span.start);
     let mut parts: Vec<Part> = Vec::new();
     let mut end = at;
     while parts.len() < 3 {
-        let Some((value, next)) = number(text, at, to) else { break };
+        let Some((value, next)) = number(text, at, to) else {
+            break;
+        };
         let span = Span::new(at, next);
         let c = text[next..to].chars().next();
         let (mark, len) = match c {
             Some('h') => (Mark::Hour, 1),
             Some('d') => (Mark::Degree, 1),
             Some('°') => (Mark::Degree, 2),
-            Some('m') if text[next..to].starts_with("m ") || text[next + 1..to].starts_with(|c: char| c.is_ascii_digit()) || parts.len() == 1 => (Mark::Minute, 1),
+            Some('m')
+                if text[next..to].starts_with("m ")
+                    || text[next + 1..to].starts_with(|c: char| c.is_ascii_digit())
+                    || parts.len() == 1 =>
+            {
+                (Mark::Minute, 1)
+            }
             Some('s') => (Mark::Second, 1),
             Some('′') => (Mark::Prime, 3),
             Some('″') => (Mark::DoublePrime, 3),
@@ -239,10 +310,25 @@ fn angle(text: &str, from: usize, to: usize) -> Option<(Angle, usize)> {
             Some(' ') => (Mark::Blank, 1),
             _ => (Mark::None, 0),
         };
-        end = if matches!(mark, Mark::Blank) { next } else { next + len };
+        end = if matches!(mark, Mark::Blank) {
+            next
+        } else {
+            next + len
+        };
         let more = text[next + len..to].trim_start_matches(' ');
-        let goes_on = more.starts_with(|c: char| c.is_ascii_digit()) && value.places == 0 && mark != Mark::None && parts.len() < 2;
-        parts.push(Part { number: value, mark: if mark == Mark::Blank && !goes_on { Mark::None } else { mark }, span });
+        let goes_on = more.starts_with(|c: char| c.is_ascii_digit())
+            && value.places == 0
+            && mark != Mark::None
+            && parts.len() < 2;
+        parts.push(Part {
+            number: value,
+            mark: if mark == Mark::Blank && !goes_on {
+                Mark::None
+            } else {
+                mark
+            },
+            span,
+        });
         at = to - more.len();
         if !goes_on {
             break;
@@ -262,14 +348,26 @@ fn angle(text: &str, from: usize, to: usize) -> Option<(Angle, usize)> {
         compass = Some(Spanned::new(value, Span::new(k, k + 1)));
         end = k + 1;
     }
-    Some((Angle::new(sign, &parts, compass, Span::new(start, end))?, end))
+    Some((
+        Angle::new(sign, &parts, compass, Span::new(start, end))?,
+        end,
+    ))
 }
 
 fn tag(text: &str, from: usize, to: usize) -> Option<Spanned<EquinoxTag>> {
     let span = Span::new(from, text[from..to].find(')').map_or(to, |k| from + k + 1));
     let words = span.of(text);
-    let mut tag = EquinoxTag { system: None, year: None, place: None, misspelt: false };
-    for (word, system) in [("ICRS", SystemWord::Icrs), ("FK5", SystemWord::Fk5), ("FK4", SystemWord::Fk4)] {
+    let mut tag = EquinoxTag {
+        system: None,
+        year: None,
+        place: None,
+        misspelt: false,
+    };
+    for (word, system) in [
+        ("ICRS", SystemWord::Icrs),
+        ("FK5", SystemWord::Fk5),
+        ("FK4", SystemWord::Fk4),
+    ] {
         if words.contains(word) {
             tag.system = Some(system);
         }
@@ -296,7 +394,15 @@ fn tag(text: &str, from: usize, to: usize) -> Option<Spanned<EquinoxTag>> {
             && end == right.len()
         {
             let misspelt = right != digits || year.whole_digits != 4;
-            let year = if misspelt { Number { mantissa: 20000, places: 1, whole_digits: 4 } } else { year };
+            let year = if misspelt {
+                Number {
+                    mantissa: 20000,
+                    places: 1,
+                    whole_digits: 4,
+                }
+            } else {
+                year
+            };
             tag.year = Some(EquinoxYear::Year { letter, year });
             tag.misspelt = misspelt;
         }
@@ -304,7 +410,9 @@ fn tag(text: &str, from: usize, to: usize) -> Option<Spanned<EquinoxTag>> {
     (tag.year.is_some() || tag.system.is_some()).then_some(Spanned::new(tag, span))
 }
 
-const MONTHS: [&str; 12] = ["Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec"];
+const MONTHS: [&str; 12] = [
+    "Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec",
+];
 
 /// The instants of a `Date:` line: the date with its clock time, and a Julian date in brackets.
 fn instants(text: &str, from: usize, to: usize) -> Vec<(InstantWritten, Nearness)> {
@@ -318,7 +426,15 @@ fn instants(text: &str, from: usize, to: usize) -> Vec<(InstantWritten, Nearness
 
 fn instant(text: &str, from: usize, to: usize) -> Option<InstantWritten> {
     let words = &text[from..to];
-    let mut written = InstantWritten { date: None, clock: None, zone: None, until: None, plus_s: None, weekday: None, span: Span::new(from, to) };
+    let mut written = InstantWritten {
+        date: None,
+        clock: None,
+        zone: None,
+        until: None,
+        plus_s: None,
+        weekday: None,
+        span: Span::new(from, to),
+    };
     if let Some(k) = words.find("JD ") {
         let at = from + k + 3;
         let (value, end) = number(text, at, to)?;
@@ -329,11 +445,28 @@ fn instant(text: &str, from: usize, to: usize) -> Option<InstantWritten> {
             _ => JulianCount::Jd,
         };
         written.span = Span::new(from, end);
-        written.date = Some(Spanned::new(DateWritten::Julian { number: value, count }, Span::new(from, end)));
+        written.date = Some(Spanned::new(
+            DateWritten::Julian {
+                number: value,
+                count,
+            },
+            Span::new(from, end),
+        ));
         return Some(written);
     }
     let mut at = from;
-    for name in ["Monday", "Tuesday", "Wednesday", "Thursday", "Friday", "Saturday", "Sunday"].iter().enumerate() {
+    for name in [
+        "Monday",
+        "Tuesday",
+        "Wednesday",
+        "Thursday",
+        "Friday",
+        "Saturday",
+        "Sunday",
+    ]
+    .iter()
+    .enumerate()
+    {
         if text[at..to].starts_with(name.1) {
             written.weekday = Some(Spanned::new(name.0 as u8, Span::new(at, at + name.1.len())));
             at += name.1.len() + 1;
@@ -351,10 +484,18 @@ fn instant(text: &str, from: usize, to: usize) -> Option<InstantWritten> {
         '/' => {
             let (m, n) = number(text, next + 1, to)?;
             let (y, n) = number(text, n + 1, to)?;
-            (year, month, day, unclear, end) = (y, m.mantissa as u32, first, m.mantissa <= 12 && first.mantissa <= 12, n);
+            (year, month, day, unclear, end) = (
+                y,
+                m.mantissa as u32,
+                first,
+                m.mantissa <= 12 && first.mantissa <= 12,
+                n,
+            );
         }
         _ => {
-            let m = MONTHS.iter().position(|m| text[next + 1..to].starts_with(m))?;
+            let m = MONTHS
+                .iter()
+                .position(|m| text[next + 1..to].starts_with(m))?;
             let (d, n) = number(text, next + 5, to)?;
             (year, month, day, unclear, end) = (first, m as u32 + 1, d, false, n);
         }
@@ -366,7 +507,14 @@ fn instant(text: &str, from: usize, to: usize) -> Option<InstantWritten> {
         to_day = Some(d.mantissa as u32);
         at = n;
     }
-    let date = DateWritten::Calendar { year: year.mantissa as i32, year_digits: year.whole_digits, month, day, to_day, order_unclear: unclear };
+    let date = DateWritten::Calendar {
+        year: year.mantissa as i32,
+        year_digits: year.whole_digits,
+        month,
+        day,
+        to_day,
+        order_unclear: unclear,
+    };
     written.date = Some(Spanned::new(date, Span::new(begin, at)));
     let rest = text[at..to].trim_start_matches([' ', 'T']);
     at = to - rest.len();
@@ -378,7 +526,13 @@ fn instant(text: &str, from: usize, to: usize) -> Option<InstantWritten> {
             let (s, m) = number(text, n + 1, to)?;
             (second, n) = (Some(s), m);
         }
-        written.clock = Some(Clock { hour, minute: Some(minute), second, pm: None, span: Span::new(at, n) });
+        written.clock = Some(Clock {
+            hour,
+            minute: Some(minute),
+            second,
+            pm: None,
+            span: Span::new(at, n),
+        });
         at = n;
     }
     let rest = text[at..to].trim_start();
@@ -393,12 +547,18 @@ fn instant(text: &str, from: usize, to: usize) -> Option<InstantWritten> {
 }
 
 fn site(text: &str, from: usize, to: usize) -> Option<SiteWritten> {
-    let mut site = SiteWritten { span: Span::new(from, to), ..SiteWritten::default() };
+    let mut site = SiteWritten {
+        span: Span::new(from, to),
+        ..SiteWritten::default()
+    };
     let mut at = from;
     if let Some(k) = text[at..to].find("(time zone ") {
         let start = at + k + 11;
         let end = text[start..to].find(')').map_or(to, |e| start + e);
-        site.zone = Some(Spanned::new(Zone::Named(text[start..end].to_string()), Span::new(start, end)));
+        site.zone = Some(Spanned::new(
+            Zone::Named(text[start..end].to_string()),
+            Span::new(start, end),
+        ));
     }
     let words = &text[at..to];
     let first = words.find(|c: char| c.is_ascii_digit() || c == '-' || c == '+');
@@ -408,7 +568,10 @@ fn site(text: &str, from: usize, to: usize) -> Option<SiteWritten> {
     };
     let name = words[..first].trim_end_matches([' ', ',']);
     if !name.is_empty() && name != "lat" {
-        site.name = Some(Spanned::new(name.to_string(), Span::new(from, from + name.len())));
+        site.name = Some(Spanned::new(
+            name.to_string(),
+            Span::new(from, from + name.len()),
+        ));
     }
     at += first;
     let (latitude, next) = angle(text, at, to)?;
@@ -427,17 +590,26 @@ fn stet(text: &str, from: usize, to: usize) -> Stet {
     let words = &text[from..to];
     let inner_end = from + words.find(']').unwrap_or(words.len());
     let inner = &text[from + 6..inner_end];
-    let (rules, reason) = inner.split_once(':').map_or((inner, None), |(r, w)| (r, Some(w)));
+    let (rules, reason) = inner
+        .split_once(':')
+        .map_or((inner, None), |(r, w)| (r, Some(w)));
     let start = from + 6;
     Stet {
         rules: rules
             .split(',')
             .map(|r| {
-                let k = start + (r.as_ptr() as usize - inner.as_ptr() as usize) + (r.len() - r.trim_start().len());
+                let k = start
+                    + (r.as_ptr() as usize - inner.as_ptr() as usize)
+                    + (r.len() - r.trim_start().len());
                 Spanned::new(r.trim().to_string(), Span::new(k, k + r.trim().len()))
             })
             .collect(),
-        reason: reason.map(|r| Spanned::new(r.trim().to_string(), Span::new(inner_end - r.len(), inner_end))),
+        reason: reason.map(|r| {
+            Spanned::new(
+                r.trim().to_string(),
+                Span::new(inner_end - r.len(), inner_end),
+            )
+        }),
         span: Span::new(from, to),
     }
 }

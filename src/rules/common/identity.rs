@@ -20,7 +20,10 @@ pub enum Known<'h> {
 
 /// Names of the bodies in the languages of the sheets, English first.
 const BODIES: [(Body, &[&str]); 9] = [
-    (Body::Sun, &["sun", "thesun", "sonne", "soleil", "sol", "sole"]),
+    (
+        Body::Sun,
+        &["sun", "thesun", "sonne", "soleil", "sol", "sole"],
+    ),
     (Body::Moon, &["moon", "themoon", "mond", "lune", "luna"]),
     (Body::Mercury, &["mercury", "merkur", "mercure", "mercurio"]),
     (Body::Venus, &["venus", "vénus", "venere"]),

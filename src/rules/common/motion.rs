@@ -74,7 +74,11 @@ fn apart_arcsec(a: [f64; 3], b: [f64; 3]) -> f64 {
 
 /// Any direction at right angles to `a`.
 fn aside(a: [f64; 3]) -> [f64; 3] {
-    let pole = if a[2].abs() < 0.9 { [0.0, 0.0, 1.0] } else { [1.0, 0.0, 0.0] };
+    let pole = if a[2].abs() < 0.9 {
+        [0.0, 0.0, 1.0]
+    } else {
+        [1.0, 0.0, 0.0]
+    };
     unit(cross(pole, a)).unwrap_or([0.0, 1.0, 0.0])
 }
 
@@ -94,7 +98,12 @@ impl Trial {
     }
 
     fn fixed(s: &Sighting) -> Trial {
-        Trial { day: s.t_day, u: s.at, v: aside(s.at), rate: 0.0 }
+        Trial {
+            day: s.t_day,
+            u: s.at,
+            v: aside(s.at),
+            rate: 0.0,
+        }
     }
 
     fn through(a: &Sighting, b: &Sighting) -> Option<Trial> {
@@ -104,7 +113,12 @@ impl Trial {
             return None;
         }
         let v = unit(mix(b.at, 1.0, a.at, -dot(a.at, b.at)))?;
-        Some(Trial { day: a.t_day, u: a.at, v, rate: angle / days })
+        Some(Trial {
+            day: a.t_day,
+            u: a.at,
+            v,
+            rate: angle / days,
+        })
     }
 
     fn residual(&self, s: &Sighting) -> f64 {
@@ -153,7 +167,11 @@ pub fn fit(sightings: &[Sighting], timed: bool) -> Option<Steady> {
         let pairs = n * (n - 1) / 2;
         let skip = pairs.div_ceil(MOST_PAIRS);
         let all = (0..n).flat_map(|i| (i + 1..n).map(move |j| (i, j)));
-        best(&mut all.step_by(skip).filter_map(|(i, j)| Trial::through(&sightings[i], &sightings[j])))
+        best(
+            &mut all
+                .step_by(skip)
+                .filter_map(|(i, j)| Trial::through(&sightings[i], &sightings[j])),
+        )
     } else {
         None
     };
@@ -181,7 +199,12 @@ fn refine(mut trial: Trial, sightings: &[Sighting], scale: f64, timed: bool) -> 
     let mut covariance = [[[0.0; 2]; 2]; 2];
     let mut scatter = 0.0;
     for _ in 0..3 {
-        let kept: Vec<&Sighting> = sightings.iter().zip(&keeps).filter(|(_, k)| **k).map(|(s, _)| s).collect();
+        let kept: Vec<&Sighting> = sightings
+            .iter()
+            .zip(&keeps)
+            .filter(|(_, k)| **k)
+            .map(|(s, _)| s)
+            .collect();
         if kept.len() < 3 {
             return None;
         }
@@ -210,13 +233,16 @@ fn refine(mut trial: Trial, sightings: &[Sighting], scale: f64, timed: bool) -> 
         for axis in 0..2 {
             covariance[axis] = inverse(matrix[axis]);
             for i in 0..2 {
-                change[axis][i] = covariance[axis][i][0] * right[axis][0] + covariance[axis][i][1] * right[axis][1];
+                change[axis][i] = covariance[axis][i][0] * right[axis][0]
+                    + covariance[axis][i][1] * right[axis][1];
             }
         }
         trial = corrected(&trial, change)?;
         let sum: f64 = kept.iter().map(|s| trial.residual(s).powi(2)).sum();
         // two coordinates each, less the two or four that were fitted
-        let free = (2 * kept.len()).saturating_sub(if moving { 4 } else { 2 }).max(1);
+        let free = (2 * kept.len())
+            .saturating_sub(if moving { 4 } else { 2 })
+            .max(1);
         scatter = (2.0 * sum / free as f64).sqrt();
         keeps = keepers(&trial, sightings, scatter.min(scale));
     }
@@ -261,13 +287,21 @@ fn inverse(m: [[f64; 2]; 2]) -> [[f64; 2]; 2] {
     if det <= 1e-12 * m[0][0] * m[1][1].max(1e-30) || m[1][1] == 0.0 {
         return [[1.0 / m[0][0].max(1e-30), 0.0], [0.0, 0.0]];
     }
-    [[m[1][1] / det, -m[0][1] / det], [-m[1][0] / det, m[0][0] / det]]
+    [
+        [m[1][1] / det, -m[0][1] / det],
+        [-m[1][0] / det, m[0][0] / det],
+    ]
 }
 
 /// The motion with its corrections applied: arcsec and arcsec a day, along and across.
 fn corrected(trial: &Trial, change: [[f64; 2]; 2]) -> Option<Trial> {
     let normal = cross(trial.u, trial.v);
-    let shift = mix(trial.v, change[0][0] * ARCSEC, normal, change[1][0] * ARCSEC);
+    let shift = mix(
+        trial.v,
+        change[0][0] * ARCSEC,
+        normal,
+        change[1][0] * ARCSEC,
+    );
     let u = unit([0, 1, 2].map(|k| trial.u[k] + shift[k]))?;
     let rate = mix(
         trial.v,
@@ -278,13 +312,27 @@ fn corrected(trial: &Trial, change: [[f64; 2]; 2]) -> Option<Trial> {
     // the velocity stays at right angles to the place
     let rate = mix(rate, 1.0, u, -dot(rate, u));
     let speed = dot(rate, rate).sqrt();
-    let v = if speed < 1e-15 { unit(mix(trial.v, 1.0, u, -dot(trial.v, u)))? } else { unit(rate)? };
-    Some(Trial { day: trial.day, u, v, rate: speed })
+    let v = if speed < 1e-15 {
+        unit(mix(trial.v, 1.0, u, -dot(trial.v, u)))?
+    } else {
+        unit(rate)?
+    };
+    Some(Trial {
+        day: trial.day,
+        u,
+        v,
+        rate: speed,
+    })
 }
 
 impl Steady {
     fn trial(&self) -> Trial {
-        Trial { day: self.middle_day, u: self.u, v: self.v, rate: self.rate }
+        Trial {
+            day: self.middle_day,
+            u: self.u,
+            v: self.v,
+            rate: self.rate,
+        }
     }
 
     /// How many sightings keep it.
@@ -314,8 +362,14 @@ impl Steady {
                 b[0] * (c[0][0] * b[0] + c[0][1] * b[1]) + b[1] * (c[1][0] * b[0] + c[1][1] * b[1])
             })
             .sum();
-        let foretold = variance.max(0.0).sqrt().min(3600.0 * FASTEST_DEG_PER_DAY * (tau.abs() + 0.01));
-        3.0 * trial.tolerance(sighting).max(self.scatter_arcsec).max(foretold)
+        let foretold = variance
+            .max(0.0)
+            .sqrt()
+            .min(3600.0 * FASTEST_DEG_PER_DAY * (tau.abs() + 0.01));
+        3.0 * trial
+            .tolerance(sighting)
+            .max(self.scatter_arcsec)
+            .max(foretold)
     }
 }
 
@@ -332,8 +386,17 @@ mod tests {
                 let t = f64::from(k) * 0.9;
                 let angle = (2.0 * t).to_radians();
                 let at = mix(u, angle.cos(), v, angle.sin());
-                let at = if k == 3 { unit(mix(at, 1.0, [0.0, 0.0, 1.0], 0.01)).unwrap() } else { at };
-                Sighting { t_day: t, at, step_arcsec: 1.0, step_s: 1.0 }
+                let at = if k == 3 {
+                    unit(mix(at, 1.0, [0.0, 0.0, 1.0], 0.01)).unwrap()
+                } else {
+                    at
+                };
+                Sighting {
+                    t_day: t,
+                    at,
+                    step_arcsec: 1.0,
+                    step_s: 1.0,
+                }
             })
             .collect();
         let fit = fit(&sightings, true).unwrap();
@@ -345,10 +408,23 @@ mod tests {
     /// What moves faster than 5° a day is no steady motion of one object.
     #[test]
     fn too_fast_is_not_fitted() {
-        let a = Sighting { t_day: 0.0, at: vector(0.0, 0.0), step_arcsec: 1.0, step_s: 1.0 };
-        let b = Sighting { t_day: 1.0, at: vector(6.0, 0.0), step_arcsec: 1.0, step_s: 1.0 };
+        let a = Sighting {
+            t_day: 0.0,
+            at: vector(0.0, 0.0),
+            step_arcsec: 1.0,
+            step_s: 1.0,
+        };
+        let b = Sighting {
+            t_day: 1.0,
+            at: vector(6.0, 0.0),
+            step_arcsec: 1.0,
+            step_s: 1.0,
+        };
         assert!(Trial::through(&a, &b).is_none());
-        let c = Sighting { at: vector(4.0, 0.0), ..b };
+        let c = Sighting {
+            at: vector(4.0, 0.0),
+            ..b
+        };
         assert!(Trial::through(&a, &c).is_some());
     }
 }

@@ -27,7 +27,12 @@ pub struct Altitudes {
 /// How long before and after the instant as written the true one may lie, seconds: rounding before, a whole step after.
 fn reach_s(case: &Case) -> Option<(f64, f64)> {
     let instant = case.meant.instant?;
-    let more = UT1_S + if instant.heliocentric { LIGHT_TIME_S } else { 0.0 };
+    let more = UT1_S
+        + if instant.heliocentric {
+            LIGHT_TIME_S
+        } else {
+            0.0
+        };
     // a date alone, or a whole hour, begins there; a finer one may have been rounded
     let before = if instant.step_s >= 3600.0 {
         0.0
@@ -149,8 +154,7 @@ pub fn when_up(case: &Case, icrs: Direction, ground: Ground) -> String {
             let words: Vec<String> = spans
                 .iter()
                 .map(|(from, to)| {
-                    let opens =
-                        super::words::seconds_between(instant.utc, *from) > -half + 90.0;
+                    let opens = super::words::seconds_between(instant.utc, *from) > -half + 90.0;
                     let closes = super::words::seconds_between(instant.utc, *to) < half - 90.0;
                     match (opens, closes) {
                         (true, true) => format!("from {} to {} UT", clock(*from), clock(*to)),
@@ -160,7 +164,10 @@ pub fn when_up(case: &Case, icrs: Direction, ground: Ground) -> String {
                     }
                 })
                 .collect();
-            format!("in the 24 hours around that time it is up {}", words.join(" and "))
+            format!(
+                "in the 24 hours around that time it is up {}",
+                words.join(" and ")
+            )
         }
     }
 }

@@ -36,6 +36,11 @@ impl Sisters {
         Some((distance <= self.steady.allowed_arcsec(&sighting), distance))
     }
 
+    /// Do they move, so that another time is another place? By more than a report's own step in a day.
+    pub fn move_beyond(&self, step_arcsec: f64) -> bool {
+        self.steady.arcsec_per_h() * 24.0 > 3.0 * step_arcsec
+    }
+
     /// How many others there are that agree among themselves.
     pub fn count(&self) -> usize {
         self.count
@@ -47,7 +52,9 @@ fn sighting(report: &Report, meant: &Meant) -> Option<Sighting> {
     let reduced = meant.reduced?;
     let said = report.uncertainty_arcsec.as_ref().map_or(0.0, |u| u.value);
     Some(Sighting {
-        t_day: meant.instant.map_or(0.0, |i| (i.utc.0 - 2_451_545.0) + i.utc.1),
+        t_day: meant
+            .instant
+            .map_or(0.0, |i| (i.utc.0 - 2_451_545.0) + i.utc.1),
         at: vector(reduced.icrs_ra_deg, reduced.icrs_dec_deg),
         step_arcsec: reduced.step_arcsec.max(said),
         step_s: meant.instant.map_or(0.0, |i| i.step_s),
@@ -74,7 +81,11 @@ pub fn together(runs: &mut [Run], to: Frame, now_utc: (f64, f64), selection: &Se
         outlying(runs, members, to, now_utc, selection);
     }
     for run in runs.iter_mut() {
-        for examined in run.examined.iter_mut().filter(|e| !e.report.stets.is_empty()) {
+        for examined in run
+            .examined
+            .iter_mut()
+            .filter(|e| !e.report.stets.is_empty())
+        {
             settle_stets(run.house, examined, selection);
         }
     }
@@ -93,7 +104,9 @@ fn settle_stets(house: &House, examined: &mut Examined, selection: &Selection) {
     let mut let_pass = Vec::new();
     for rule in [report_repeated::RULE.name, report_outlying::RULE.name] {
         let named = examined.report.stets.iter().any(|stet| {
-            stet.reason.as_ref().is_some_and(|r| !r.value.trim().is_empty())
+            stet.reason
+                .as_ref()
+                .is_some_and(|r| !r.value.trim().is_empty())
                 && stet.rules.iter().any(|n| n.value.trim() == rule)
         });
         if named && examined.findings.iter().any(|f| f.rule == rule) {
@@ -129,7 +142,9 @@ fn repeated(runs: &mut [Run], members: &[(usize, usize)], selection: &Selection)
             .find(|(_, q, f)| same(&runs[r].examined[e], &runs[*q].examined[*f]))
             .map(|(_, q, f)| (*q, *f));
         let Some((q, f)) = first else { continue };
-        let Some(weight) = weight(&report_repeated::RULE, runs[r].house, selection) else { continue };
+        let Some(weight) = weight(&report_repeated::RULE, runs[r].house, selection) else {
+            continue;
+        };
         let mut out = Findings::new(&report_repeated::RULE, Some(weight));
         let other = runs[q].examined[f].report.position.span;
         let other_sheet = (q != r).then(|| runs[q].sheet.to_string());
@@ -137,13 +152,17 @@ fn repeated(runs: &mut [Run], members: &[(usize, usize)], selection: &Selection)
         let finding = out.add(
             report.position.span,
             match &other_sheet {
-                Some(sheet) => format!("The same object, instant and place are reported in {sheet} too."),
+                Some(sheet) => {
+                    format!("The same object, instant and place are reported in {sheet} too.")
+                }
                 None => "The same object, instant and place are reported above too.".to_string(),
             },
             "Count it once.",
         );
         if other_sheet.is_none() {
-            finding.related.push((other, "the first of the two".to_string()));
+            finding
+                .related
+                .push((other, "the first of the two".to_string()));
         }
         add(&mut runs[r].examined[e], out.into_list());
     }
@@ -154,18 +173,22 @@ fn same(a: &Examined, b: &Examined) -> bool {
     let (Some(x), Some(y)) = (sighting(&a.report, &a.meant), sighting(&b.report, &b.meant)) else {
         return false;
     };
-    let (Some(i), Some(j)) = (a.meant.instant, b.meant.instant) else { return false };
+    let (Some(i), Some(j)) = (a.meant.instant, b.meant.instant) else {
+        return false;
+    };
     let observers = match (&a.report.observer, &b.report.observer) {
         (Some(p), Some(q)) => key(&p.value) == key(&q.value),
         _ => true,
     };
     let sites = match (&a.meant.site, &b.meant.site) {
         (Some(p), Some(q)) => {
-            (p.latitude_deg - q.latitude_deg).abs() < 0.1 && (p.longitude_deg - q.longitude_deg).abs() < 0.1
+            (p.latitude_deg - q.latitude_deg).abs() < 0.1
+                && (p.longitude_deg - q.longitude_deg).abs() < 0.1
         }
         _ => true,
     };
-    let step = |s: &Sighting, e: &Examined| e.meant.reduced.map_or(s.step_arcsec, |r| r.step_arcsec);
+    let step =
+        |s: &Sighting, e: &Examined| e.meant.reduced.map_or(s.step_arcsec, |r| r.step_arcsec);
     let d = [0, 1, 2].map(|k| x.at[k] - y.at[k]);
     let arcsec = (d[0] * d[0] + d[1] * d[1] + d[2] * d[2]).sqrt() * 206_264.806;
     seconds_between(i.utc, j.utc).abs() < 0.5
@@ -175,7 +198,13 @@ fn same(a: &Examined, b: &Examined) -> bool {
 }
 
 /// Who contradicts at least three others.
-fn outlying(runs: &mut [Run], members: &[(usize, usize)], to: Frame, now_utc: (f64, f64), selection: &Selection) {
+fn outlying(
+    runs: &mut [Run],
+    members: &[(usize, usize)],
+    to: Frame,
+    now_utc: (f64, f64),
+    selection: &Selection,
+) {
     let usable: Vec<(usize, usize, Sighting, bool)> = members
         .iter()
         .filter_map(|&(r, e)| {
@@ -189,13 +218,22 @@ fn outlying(runs: &mut [Run], members: &[(usize, usize)], to: Frame, now_utc: (f
         return;
     }
     let (r, e, ..) = usable[0];
-    let Some(name) = runs[r].examined[e].report.object.as_ref().map(|o| o.value.clone()) else { return };
+    let Some(name) = runs[r].examined[e]
+        .report
+        .object
+        .as_ref()
+        .map(|o| o.value.clone())
+    else {
+        return;
+    };
     if body(&name).is_some() || catalogue::find(&name).is_some() {
         return;
     }
     let timed = usable.iter().all(|u| u.3);
     let sightings: Vec<Sighting> = usable.iter().map(|u| u.2).collect();
-    let Some(steady) = motion::fit(&sightings, timed) else { return };
+    let Some(steady) = motion::fit(&sightings, timed) else {
+        return;
+    };
     let keepers = steady.kept_by();
     if keepers < 3 || keepers * 2 <= usable.len() {
         return;
@@ -227,15 +265,27 @@ fn outlying(runs: &mut [Run], members: &[(usize, usize)], to: Frame, now_utc: (f
                 "Ask for the original position, equinox and time.",
             );
             for span in others {
-                finding.related.push((span, "another report of it".to_string()));
+                finding
+                    .related
+                    .push((span, "another report of it".to_string()));
             }
             add(&mut runs[r].examined[e], out.into_list());
         }
         if needs_explaining(&runs[r].examined[e].findings) {
             // the others' word without this one's own
-            let others: Vec<Sighting> = sightings.iter().enumerate().filter(|(j, _)| *j != k).map(|(_, s)| *s).collect();
-            if let Some(steady) = motion::fit(&others, timed).filter(|s| s.kept_by() >= 3 || s.kept_by() == others.len()) {
-                let sisters = Sisters { count: steady.kept_by(), steady };
+            let others: Vec<Sighting> = sightings
+                .iter()
+                .enumerate()
+                .filter(|(j, _)| *j != k)
+                .map(|(_, s)| *s)
+                .collect();
+            if let Some(steady) = motion::fit(&others, timed)
+                .filter(|s| s.kept_by() >= 3 || s.kept_by() == others.len())
+            {
+                let sisters = Sisters {
+                    count: steady.kept_by(),
+                    steady,
+                };
                 let run = &runs[r];
                 let examined = &run.examined[e];
                 let case = Case {
@@ -251,4 +301,3 @@ fn outlying(runs: &mut [Run], members: &[(usize, usize)], to: Frame, now_utc: (f
         }
     }
 }
-
