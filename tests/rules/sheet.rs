@@ -179,9 +179,7 @@ fn position_line(
     at: usize,
     body: &str,
 ) -> Option<(Position, Option<Spanned<EquinoxTag>>)> {
-    let from = if body.starts_with("RA ") {
-        at + 3
-    } else if body.starts_with("HA ") {
+    let from = if body.starts_with("RA ") || body.starts_with("HA ") {
         at + 3
     } else if body.starts_with(|c: char| c.is_ascii_digit()) {
         at
