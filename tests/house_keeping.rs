@@ -90,18 +90,14 @@ fn nothing_reaches_backwards() {
         for (path, text) in rust_files(folder) {
             for (number, line) in text.lines().enumerate() {
                 for name in *forbidden {
-                    let reaches = code(line).match_indices(&format!("crate::{name}")).any(
-                        |(at, found)| {
-                            let next = code(line)[at + found.len()..].chars().next();
-                            !next.is_some_and(|c| c.is_alphanumeric() || c == '_')
-                        },
-                    );
-                    assert!(
-                        !reaches,
-                        "{}:{} uses {name}",
-                        path.display(),
-                        number + 1
-                    );
+                    let reaches =
+                        code(line)
+                            .match_indices(&format!("crate::{name}"))
+                            .any(|(at, found)| {
+                                let next = code(line)[at + found.len()..].chars().next();
+                                !next.is_some_and(|c| c.is_alphanumeric() || c == '_')
+                            });
+                    assert!(!reaches, "{}:{} uses {name}", path.display(), number + 1);
                 }
             }
         }
@@ -200,7 +196,10 @@ fn the_rules_of_the_table_are_the_files_of_the_folder() {
 /// Examples are invented; mail goes nowhere. Source: RFC 2606, section 2 (the top-level domain `.example`).
 #[test]
 fn addresses_in_the_examples_are_reserved_ones() {
-    let mut files = vec![root().join("examples/colure.yaml"), root().join("README.md")];
+    let mut files = vec![
+        root().join("examples/colure.yaml"),
+        root().join("README.md"),
+    ];
     for entry in fs::read_dir(root().join("examples/inbox")).unwrap() {
         files.push(entry.unwrap().path());
     }
