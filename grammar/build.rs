@@ -67,6 +67,8 @@ const PLAIN: &[(&str, &str)] = &[
     ("at", "At"),
     ("from", "From"),
     ("filler", "Filler"),
+    ("and", "And"),
+    ("lead-in", "LeadIn"),
     ("found", "Found"),
     ("airless", "Airless"),
     ("all", "All"),

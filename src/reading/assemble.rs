@@ -2,9 +2,10 @@
 
 use super::equinox::Tagged;
 use super::position::{Found, positions};
+use super::row::Row;
 use super::scan::{Atom, Kind, atoms};
 use super::statements::{Statements, gather};
-use super::table::{self, Row};
+use super::table;
 use super::text::Text;
 use super::words::Word;
 use crate::report::{DateWritten, InstantWritten, Nearness, Report, Role, SiteWritten, Zone};
@@ -443,72 +444,28 @@ impl<'t> Reader<'t> {
         (!name.is_empty() && name.len() <= 80).then(|| Spanned::new(name.to_string(), span))
     }
 
+    /// Words that lead to a name or follow it and are no part of one.
     fn never_a_name(&self, a: &Atom) -> bool {
-        let words = a.span.of(self.text);
-        match &a.kind {
-            Kind::Word(p) => {
-                !p.means(Word::New)
-                    && [
-                        Word::Filler,
-                        Word::At,
-                        Word::From,
-                        Word::Position,
-                        Word::Object,
-                        Word::Found,
-                        Word::RoleMeasured,
-                        Word::RightAscension,
-                        Word::Declination,
-                        Word::Both,
-                        Word::Date,
-                        Word::Time,
-                        Word::Universal,
-                        Word::Equinox,
-                        Word::Epoch,
-                        Word::ThatIs,
-                        Word::Mean,
-                        Word::All,
-                    ]
-                    .iter()
-                    .any(|w| p.means(*w))
-                    && !(p.means(Word::Object) && words.starts_with(char::is_lowercase))
-                    || [
-                        Word::Found,
-                        Word::At,
-                        Word::Filler,
-                        Word::RightAscension,
-                        Word::Both,
-                    ]
-                    .iter()
-                    .any(|w| p.means(*w))
-            }
-            Kind::Plain => matches!(
-                &*words.to_lowercase(),
-                "i" | "we"
-                    | "on"
-                    | "ich"
-                    | "wir"
-                    | "je"
-                    | "nous"
-                    | "io"
-                    | "noi"
-                    | "eu"
-                    | "yo"
-                    | "ik"
-                    | "we've"
-                    | "with"
-                    | "that"
-                    | "and"
-                    | "new"
-                    | "to"
-                    | "habe"
-                    | "haben"
-                    | "j'ai"
-                    | "ho"
-                    | "he"
-                    | "hemos"
-            ),
-            _ => false,
-        }
+        const LEADING: [Word; 17] = [
+            Word::Filler,
+            Word::And,
+            Word::LeadIn,
+            Word::At,
+            Word::From,
+            Word::Position,
+            Word::Found,
+            Word::RoleMeasured,
+            Word::RightAscension,
+            Word::Declination,
+            Word::Both,
+            Word::Date,
+            Word::Time,
+            Word::Universal,
+            Word::Equinox,
+            Word::ThatIs,
+            Word::All,
+        ];
+        LEADING.iter().any(|w| a.means(*w)) && !(a.means(Word::New) && !a.means(Word::Found))
     }
 
     // ------------------------------------------------------------------------------------------ tables
@@ -525,12 +482,6 @@ impl<'t> Reader<'t> {
                 block: row.span,
             };
             let mut said = row.said.clone();
-            if said.tags.is_empty()
-                && draft.found.tags.is_empty()
-                && let Some(tag) = head.tag
-            {
-                said.tags.push(tag);
-            }
             if said.clock_zone.is_none() {
                 said.clock_zone.clone_from(&head.zone);
             }

@@ -13,6 +13,7 @@ pub mod instant;
 pub mod marks;
 pub mod number;
 mod position;
+mod row;
 pub mod run;
 pub mod scan;
 pub mod site;

@@ -206,7 +206,7 @@ impl<'t> Finder<'_, 't> {
                     ]
                     .iter()
                     .any(|w| p.means(*w)) => {}
-                Kind::Plain if is_and(atom.span.of(self.text)) => {}
+                Kind::Word(p) if p.means(Word::And) => {}
                 Kind::Angle(_) | Kind::Run(_) | Kind::Joined(_) => {
                     // directly after the RA: the declination, or the RA once more in another form
                     let (candidate, after) = self.angle_at(next, Axis::Dec, Some(&ra))?;
@@ -606,6 +606,7 @@ impl<'t> Finder<'_, 't> {
                     } else if self.axis(i).is_some()
                         || ![
                             Word::Filler,
+                            Word::And,
                             Word::At,
                             Word::Position,
                             Word::Equinox,
@@ -623,7 +624,7 @@ impl<'t> Finder<'_, 't> {
                         g.unit = Some(AngleUnit::Degrees);
                     } else if w == "h" {
                         g.unit = Some(AngleUnit::Hours);
-                    } else if !is_and(w) {
+                    } else {
                         return None;
                     }
                 }
@@ -657,7 +658,7 @@ impl<'t> Finder<'_, 't> {
                     ]
                     .iter()
                     .any(|w| p.means(*w)) => {}
-                Kind::Plain if is_and(atom.span.of(self.text)) => {}
+                Kind::Word(p) if p.means(Word::And) => {}
                 _ => return None,
             }
         }
@@ -681,7 +682,7 @@ impl<'t> Finder<'_, 't> {
                 Kind::Word(_) if self.axis(i) == Some(Axis::Dec) => {
                     return self.to_number(i + 1, g, false);
                 }
-                Kind::Plain if is_and(atom.span.of(self.text)) => {}
+                Kind::Word(p) if p.means(Word::And) => {}
                 _ => return None,
             }
         }
@@ -880,6 +881,9 @@ impl<'t> Finder<'_, 't> {
 
     /// "that is", "=" or a bracket opened right after a position: another form of it follows.
     fn form_led(&self, i: usize, from: usize) -> bool {
+        if from == 0 {
+            return false;
+        }
         for k in (from..i).rev().take(3) {
             match &self.atoms[k].kind {
                 Kind::Word(p) if p.means(Word::ThatIs) => return true,
@@ -889,7 +893,7 @@ impl<'t> Finder<'_, 't> {
                 _ => return false,
             }
         }
-        from > 0 && i.saturating_sub(from) <= 2
+        i.saturating_sub(from) <= 2
     }
 
     /// First on its line, or after a name and perhaps a colon or a date: the row of a list.
@@ -1158,8 +1162,4 @@ fn apart_deg(a: &Position, b: &Position) -> Option<f64> {
     let ((r1, d1), (r2, d2)) = (degrees(a)?, degrees(b)?);
     let dr = (r1 - r2 + 180.0).rem_euclid(360.0) - 180.0;
     Some((dr * d1.to_radians().cos()).abs().max((d1 - d2).abs()))
-}
-
-fn is_and(word: &str) -> bool {
-    matches!(word, "and" | "und" | "et" | "y" | "e" | "en" | "i")
 }

@@ -1,33 +1,25 @@
 //! Tables: a head that names its columns, and rows read by it (CSV, TSV, pipes, Markdown, aligned columns).
 
-use super::angle::{angle, angle_blanks, angle_joined};
-use super::equinox::{Tagged, equinox_tag, equinox_year};
-use super::instant::{clock, instant, zone};
-use super::position::{Found, positions};
-use super::scan::{Atom, Kind, atoms};
-use super::site::{elevation, site_coordinates};
-use super::statements::{Statements, gather};
+use super::equinox::{Tagged, equinox_year};
+use super::instant::zone;
+use super::row::{self, Row};
+use super::scan::{Kind, atoms};
 use super::text::Text;
 use super::words::Word;
-use crate::report::{
-    Angle, AngleUnit, DateWritten, HorizonQuantity, InstantWritten, JulianCount, Position,
-    PositionKind, SiteWritten, StatedHorizon, Zone,
-};
+use crate::report::{AngleUnit, JulianCount, Zone};
 use crate::sheet::{Block, Sheet};
 use crate::span::{Span, Spanned};
-use nom::Parser;
-use nom::branch::alt;
 
 /// How cells are parted.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
-enum Layout {
+pub(super) enum Layout {
     Delimited(char),
     Aligned,
 }
 
 /// What a column holds.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
-enum Column {
+pub(super) enum Column {
     Ra,
     Dec,
     Both,
@@ -51,6 +43,15 @@ enum Column {
     Note,
 }
 
+/// One column's head.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct ColumnHead {
+    pub column: Column,
+    pub span: Span,
+    pub tag: Option<Spanned<Tagged>>,
+    pub unit: Option<AngleUnit>,
+}
+
 /// A table's head.
 #[derive(Clone, Debug)]
 pub struct Head {
@@ -60,23 +61,9 @@ pub struct Head {
     pub tag: Option<Spanned<Tagged>>,
     /// The zone its time column names.
     pub zone: Option<Spanned<Zone>>,
-    layout: Layout,
-    columns: Vec<(Column, Span)>,
-    ra_unit: Option<AngleUnit>,
-    feet: bool,
-}
-
-/// One row read by its head.
-#[derive(Clone, Debug)]
-pub struct Row {
-    /// Its line, from 0.
-    pub line: usize,
-    /// Its words.
-    pub span: Span,
-    /// Its position.
-    pub found: Found,
-    /// What else it says.
-    pub said: Statements,
+    pub(super) layout: Layout,
+    pub(super) columns: Vec<ColumnHead>,
+    pub(super) feet: bool,
 }
 
 /// The head of a table at `line`, if that is one: it names a right ascension and a declination (or a position) in two or more cells.
@@ -112,14 +99,13 @@ fn head_in(sheet: &Sheet, line: usize, layout: Layout) -> Option<Head> {
         zone: None,
         layout,
         columns: Vec::new(),
-        ra_unit: None,
         feet: false,
     };
     for &cell in &cells {
         let column = head.column(&sheet.text, cell)?;
-        head.columns.push((column, cell));
+        head.columns.push(column);
     }
-    let has = |c: Column| head.columns.iter().any(|(k, _)| *k == c);
+    let has = |c: Column| head.columns.iter().any(|k| k.column == c);
     let names_position = has(Column::Ra) && has(Column::Dec)
         || has(Column::Both)
         || has(Column::HourAngle) && has(Column::Dec)
@@ -127,7 +113,7 @@ fn head_in(sheet: &Sheet, line: usize, layout: Layout) -> Option<Head> {
     let known = head
         .columns
         .iter()
-        .filter(|(c, _)| *c != Column::Note)
+        .filter(|c| c.column != Column::Note)
         .count();
     (names_position && known * 2 >= cells.len()).then_some(head)
 }
@@ -156,12 +142,13 @@ pub fn rows_from(sheet: &Sheet, head: &Head, from: usize, end: usize) -> Vec<Row
         if self::head(sheet, line, end).is_some() {
             break;
         }
-        match row(sheet, head, line) {
-            Some(r) => {
-                found.push(r);
+        let read = row::read(sheet, head, line);
+        match read.is_empty() {
+            false => {
+                found.extend(read);
                 misses = 0;
             }
-            None => {
+            true => {
                 misses += 1;
                 if misses > 1 && matches!(head.layout, Layout::Aligned) {
                     break;
@@ -201,7 +188,11 @@ fn padded_seconds(rows: &mut [Row]) {
 pub fn continues(sheet: &Sheet, head: &Head, block: Block) -> bool {
     let lines = block.end - block.first;
     let rows = (block.first..block.end)
-        .filter(|l| row(sheet, head, *l).is_some_and(|r| r.found.position.second.is_some()))
+        .filter(|l| {
+            row::read(sheet, head, *l)
+                .first()
+                .is_some_and(|r| r.found.position.second.is_some())
+        })
         .count();
     let delimited = match head.layout {
         Layout::Delimited(d) => sheet.lines()[block.first].body.of(&sheet.text).contains(d),
@@ -219,7 +210,7 @@ pub fn continues(sheet: &Sheet, head: &Head, block: Block) -> bool {
 }
 
 /// The cells of a line, trimmed; quotes taken off.
-fn cells(text: &str, body: Span, layout: Layout) -> Vec<Span> {
+pub(super) fn cells(text: &str, body: Span, layout: Layout) -> Vec<Span> {
     let words = body.of(text);
     let mut found = Vec::new();
     match layout {
@@ -288,7 +279,7 @@ fn trimmed(text: &str, span: Span) -> Span {
 
 impl Head {
     /// What a head's cell names; `None` where the line can be no head (it holds a number that is no equinox).
-    fn column(&mut self, text: &str, cell: Span) -> Option<Column> {
+    fn column(&mut self, text: &str, cell: Span) -> Option<ColumnHead> {
         let mut words = Vec::new();
         atoms(Text::window(text, cell), 0, &mut false, &mut words);
         let mut column = Column::Note;
@@ -395,9 +386,6 @@ impl Head {
         if column == Column::Date && clock_word {
             column = Column::Instant;
         }
-        if column == Column::Ra && unit.is_some() {
-            self.ra_unit = unit;
-        }
         if matches!(
             column,
             Column::Ra | Column::Dec | Column::Both | Column::Equinox | Column::Note
@@ -406,353 +394,17 @@ impl Head {
         {
             self.tag = Some(t);
         }
-        Some(column)
-    }
-}
-
-/// One line read by a head; `None` where it is no row.
-fn row(sheet: &Sheet, head: &Head, line: usize) -> Option<Row> {
-    let text = &sheet.text;
-    let body = sheet.lines()[line].body;
-    let mut split = cells(text, body, head.layout);
-    if split.is_empty() || split.len() < 2 {
-        return None;
-    }
-    if matches!(head.layout, Layout::Aligned) && split.len() != head.columns.len() {
-        split = by_column(sheet, head, line)?;
-    }
-    let mut said = Statements::default();
-    let mut site = SiteWritten {
-        signed_field: true,
-        span: Span::new(body.start, body.start),
-        ..SiteWritten::default()
-    };
-    let (mut ra, mut dec, mut hour_angle, mut altitude, mut azimuth) =
-        (None, None, None, None, None);
-    let mut whole: Option<Found> = None;
-    let mut date: Option<InstantWritten> = None;
-    let mut time = None;
-    let mut tags = Vec::new();
-    let mut numbers = 0;
-    for (&(column, _), &cell) in head.columns.iter().zip(&split) {
-        let words = cell.of(text);
-        if words.is_empty() || matches!(words, "-" | "--" | "—" | "–" | "…" | "...") {
-            continue;
-        }
-        let input = Text::window(text, cell);
-        match column {
-            Column::Ra => ra = coordinate(input, true),
-            Column::Dec => dec = coordinate(input, false),
-            Column::HourAngle => hour_angle = coordinate(input, true),
-            Column::Altitude => altitude = coordinate(input, false),
-            Column::Azimuth => azimuth = coordinate(input, false),
-            Column::Both => {
-                let mut inner = Vec::new();
-                atoms(input, line, &mut false, &mut inner);
-                whole = positions(text, &inner)
-                    .into_iter()
-                    .next()
-                    .or_else(|| forced_pair(text, &inner));
-            }
-            Column::Object => said.objects.push(Spanned::new(words.to_string(), cell)),
-            Column::Observer => said.observers.push(Spanned::new(words.to_string(), cell)),
-            Column::Instant | Column::Date | Column::Clock => {
-                if let Ok((_, i)) = instant(input) {
-                    match &mut date {
-                        Some(d) if d.clock.is_none() && i.date.is_none() => {
-                            d.clock = i.clock;
-                            d.zone = i.zone.or(d.zone.take());
-                            d.span = d.span.cover(i.span);
-                        }
-                        Some(_) => {}
-                        None => date = Some(i),
-                    }
-                } else if let Ok((rest, c)) = clock(input) {
-                    let z = zone(rest).ok().map(|(_, z)| z);
-                    time = Some((c, z));
-                }
-            }
-            Column::Julian(count) => {
-                if let Ok((rest, number)) = super::number::number(input)
-                    && rest.is_empty()
-                {
-                    let d = Spanned::new(DateWritten::Julian { number, count }, cell);
-                    let i = InstantWritten {
-                        date: Some(d),
-                        clock: None,
-                        zone: None,
-                        until: None,
-                        plus_s: None,
-                        weekday: None,
-                        span: cell,
-                    };
-                    match date {
-                        None => date = Some(i),
-                        Some(_) => said.instants.push(i),
-                    }
-                }
-            }
-            Column::Equinox => {
-                if let Ok((_, t)) = equinox_tag(input).or_else(|_| equinox_year(input)) {
-                    tags.push(Spanned::new(Tagged { weak: false, ..t }, cell));
-                }
-            }
-            Column::Site => {
-                let mut inner = Vec::new();
-                atoms(input, line, &mut false, &mut inner);
-                if let Ok((_, s)) = site_coordinates(input) {
-                    said.sites.push(s);
-                } else if let Some(k) = inner.iter().position(|a| matches!(a.kind, Kind::Site(_))) {
-                    let Kind::Site(s) = &inner[k].kind else {
-                        continue;
-                    };
-                    let name = text[cell.start..s.span.start]
-                        .trim()
-                        .trim_end_matches([',', ';', '(', ':'])
-                        .trim();
-                    let mut s = (**s).clone();
-                    if !name.is_empty() {
-                        s.name = Some(Spanned::new(
-                            name.to_string(),
-                            Span::new(cell.start, cell.start + name.len()),
-                        ));
-                    }
-                    said.sites.push(s);
-                } else {
-                    said.sites.push(SiteWritten {
-                        name: Some(Spanned::new(words.to_string(), cell)),
-                        span: cell,
-                        ..SiteWritten::default()
-                    });
-                }
-            }
-            Column::Latitude => site.latitude = coordinate(input, false),
-            Column::Longitude => site.longitude = coordinate(input, false),
-            Column::Elevation => {
-                site.elevation_m = match elevation(input) {
-                    Ok((_, m)) => Some(m),
-                    Err(_) => {
-                        super::number::number(input.skip(usize::from(words.starts_with('-'))))
-                            .ok()
-                            .map(|(_, n)| {
-                                let v = n.value() * if head.feet { 0.3048 } else { 1.0 };
-                                Spanned::new(if words.starts_with('-') { -v } else { v }, cell)
-                            })
-                    }
-                };
-            }
-            Column::Magnitude => {
-                said.magnitude = super::number::number(input)
-                    .ok()
-                    .map(|(_, n)| Spanned::new(n.value(), cell))
-            }
-            Column::Constellation => {
-                said.constellation = super::words::word(input, |w| match w {
-                    Word::ConstellationName(c) => Some(c),
-                    _ => None,
-                })
-                .map(|(_, c)| Spanned::new(c, cell));
-            }
-            Column::Uncertainty | Column::Note => {
-                let mut inner = Vec::new();
-                atoms(input, line, &mut false, &mut inner);
-                let note = gather(text, &inner, &[]);
-                said.stets.extend(note.stets);
-                said.roles.extend(note.roles);
-                if said.claims_new.is_none() {
-                    said.claims_new = note.claims_new;
-                }
-            }
-        }
-        numbers += usize::from(words.chars().any(|c| c.is_ascii_digit()));
-    }
-    if let Some((c, z)) = time {
-        match &mut date {
-            Some(d) if d.clock.is_none() => {
-                d.clock = Some(c);
-                d.zone = z.or(d.zone.take());
-                d.span = d.span.cover(c.span);
-            }
-            Some(_) => {}
-            None => {
-                date = Some(InstantWritten {
-                    date: None,
-                    clock: Some(c),
-                    zone: z,
-                    until: None,
-                    plus_s: None,
-                    weekday: None,
-                    span: c.span,
-                })
-            }
-        }
-    }
-    said.instants.extend(date);
-    let turn = usize::from(said.instants.len() > 1);
-    said.instants.rotate_right(turn);
-    if site.latitude.is_some() || site.longitude.is_some() {
-        let spans = [
-            site.latitude.map(|a| a.span),
-            site.longitude.map(|a| a.span),
-        ];
-        site.span = spans
-            .into_iter()
-            .flatten()
-            .reduce(Span::cover)
-            .unwrap_or(body);
-        said.sites.insert(0, site);
-    } else if let (Some(m), Some(s)) = (site.elevation_m, said.sites.last_mut()) {
-        s.elevation_m = s.elevation_m.or(Some(m));
-    }
-    for (quantity, angle) in [
-        (HorizonQuantity::Altitude, altitude),
-        (HorizonQuantity::Azimuth, azimuth),
-        (HorizonQuantity::HourAngle, hour_angle),
-    ] {
-        if let Some(angle) = angle
-            && ra.is_some()
-        {
-            said.horizon.push(StatedHorizon { quantity, angle });
-        }
-    }
-    let mut found = match whole {
-        Some(f) => f,
-        None => {
-            let (kind, first, second) = match (ra, hour_angle, dec, altitude, azimuth) {
-                (Some(_), _, _, _, _) => (PositionKind::Equatorial, ra, dec),
-                (None, Some(_), Some(_), _, _) => (PositionKind::HourAngle, hour_angle, dec),
-                (None, None, None, Some(_), Some(_)) => {
-                    (PositionKind::Horizontal, azimuth, altitude)
-                }
-                (None, None, Some(_), _, _) if numbers > 1 => (PositionKind::Equatorial, None, dec),
-                _ => return None,
-            };
-            bare_found(head, kind, first, second)
-        }
-    };
-    found.tags.extend(tags);
-    if said.claims_new.is_none()
-        && let Some(o) = said.objects.first()
-    {
-        let mut inner = Vec::new();
-        atoms(Text::window(text, o.span), line, &mut false, &mut inner);
-        said.claims_new = inner.iter().find(|a| a.means(Word::New)).map(|a| a.span);
-    }
-    Some(Row {
-        line,
-        span: Span::new(body.start, body.end),
-        found,
-        said,
-    })
-}
-
-fn bare_found(
-    head: &Head,
-    kind: PositionKind,
-    first: Option<Angle>,
-    second: Option<Angle>,
-) -> Found {
-    let span = [first, second]
-        .iter()
-        .flatten()
-        .map(|a| a.span)
-        .reduce(Span::cover)
-        .unwrap_or_default();
-    let first_unit = match (kind, first) {
-        (PositionKind::HourAngle, _) => Some(AngleUnit::Hours),
-        (PositionKind::Horizontal, _) => Some(AngleUnit::Degrees),
-        (_, Some(a)) => a.marked_unit().or({
-            if a.parts().len() > 1 {
-                head.ra_unit.or(Some(AngleUnit::Hours))
-            } else {
-                head.ra_unit
-                    .or((a.value() >= 24.0).then_some(AngleUnit::Degrees))
-            }
-        }),
-        _ => None,
-    };
-    let position = Position {
-        kind,
-        first,
-        second,
-        first_unit,
-        polar_distance: false,
-        zenith_distance: false,
-        azimuth_from_south: false,
-        airless: false,
-        labelled: true,
-        span,
-    };
-    Found {
-        position,
-        other_forms: Vec::new(),
-        tags: Vec::new(),
-
-        first: 0,
-        end: 0,
-    }
-}
-
-/// A cell that holds one coordinate and nothing else of weight.
-fn coordinate(input: Text<'_>, joined: bool) -> Option<Angle> {
-    let input = input.skip_blanks();
-    if let Ok((rest, a)) = alt((angle, angle_blanks)).parse(input)
-        && rest.skip_blanks().is_empty()
-    {
-        let six = a.parts().len() == 1 && a.parts()[0].number.whole_digits >= 6;
-        if !(joined && six) {
-            return Some(a);
-        }
-    }
-    if let Ok((rest, a)) = angle_joined(input)
-        && rest.skip_blanks().is_empty()
-    {
-        return Some(a);
-    }
-    // a footnote's letter or an uncertainty may follow
-    match alt((angle, angle_blanks)).parse(input) {
-        Ok((rest, a)) => {
-            let tail = rest.skip_blanks();
-            let note = tail.as_str().chars().count() <= 2
-                && !tail.as_str().chars().any(|c| c.is_ascii_digit())
-                || super::uncertainty::uncertainty(tail).is_ok();
-            note.then_some(a)
-        }
-        Err(_) => None,
-    }
-}
-
-/// A cell headed "position" holds a pair whatever its notation.
-fn forced_pair(text: &str, inner: &[Atom]) -> Option<Found> {
-    let angles: Vec<Angle> = inner
-        .iter()
-        .filter_map(|a| match &a.kind {
-            Kind::Angle(a) | Kind::Joined(a) => Some(**a),
-            Kind::Run(r) => r.angle(0, r.numbers.len().min(3)),
-            _ => None,
+        Some(ColumnHead {
+            column,
+            span: cell,
+            tag: tag_here,
+            unit,
         })
-        .collect();
-    let [ra, dec] = angles[..] else { return None };
-    let _ = text;
-    let head = Head {
-        line: 0,
-        tag: None,
-        zone: None,
-        layout: Layout::Aligned,
-        columns: Vec::new(),
-        ra_unit: None,
-        feet: false,
-    };
-    Some(bare_found(
-        &head,
-        PositionKind::Equatorial,
-        Some(ra),
-        Some(dec),
-    ))
+    }
 }
 
 /// Cells by where the head's words stand, where the count does not tell (an empty cell, a value that touches its neighbour).
-fn by_column(sheet: &Sheet, head: &Head, line: usize) -> Option<Vec<Span>> {
+pub(super) fn by_column(sheet: &Sheet, head: &Head, line: usize) -> Option<Vec<Span>> {
     let text = &sheet.text;
     let head_start = sheet.lines()[head.line].whole.start;
     let whole = sheet.lines()[line].whole;
@@ -761,7 +413,7 @@ fn by_column(sheet: &Sheet, head: &Head, line: usize) -> Option<Vec<Span>> {
     let starts: Vec<usize> = head
         .columns
         .iter()
-        .map(|(_, s)| column_of(s.start, head_start))
+        .map(|c| column_of(c.span.start, head_start))
         .collect();
     let words = whole.of(text);
     let chars: Vec<(usize, char)> = words.char_indices().collect();

@@ -69,6 +69,8 @@ pub enum Word {
     At,
     From,
     Filler,
+    And,
+    LeadIn,
     Found,
     Airless,
     All,

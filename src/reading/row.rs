@@ -1,0 +1,476 @@
+//! One row of a table, read by the table's head: its cells become a position and the statements beside it.
+
+use super::angle::{angle, angle_blanks, angle_joined};
+use super::equinox::{Tagged, equinox_tag, equinox_year};
+use super::instant::{clock, instant, zone};
+use super::position::{Found, positions};
+use super::scan::{Atom, Kind, atoms};
+use super::site::{elevation, site_coordinates};
+use super::statements::{Statements, gather};
+use super::table::{Column, ColumnHead, Head, Layout, by_column, cells};
+use super::text::Text;
+use super::words::{Word, word};
+use crate::report::{
+    Angle, AngleUnit, Clock, DateWritten, HorizonQuantity, InstantWritten, Position, PositionKind,
+    SiteWritten, StatedHorizon, Zone,
+};
+use crate::sheet::Sheet;
+use crate::span::{Span, Spanned};
+use nom::Parser;
+use nom::branch::alt;
+
+/// One row, or one object's part of it.
+#[derive(Clone, Debug)]
+pub struct Row {
+    /// Its line, from 0.
+    pub line: usize,
+    /// Its words.
+    pub span: Span,
+    /// Its position.
+    pub found: Found,
+    /// What else it says.
+    pub said: Statements,
+}
+
+/// The reports of one line read by a head: one for each object that the line names; none where it is no row.
+pub fn read(sheet: &Sheet, head: &Head, line: usize) -> Vec<Row> {
+    let text = &sheet.text;
+    let body = sheet.lines()[line].body;
+    let mut split = cells(text, body, head.layout);
+    if split.len() < 2 {
+        return Vec::new();
+    }
+    if matches!(head.layout, Layout::Aligned) && split.len() != head.columns.len() {
+        match by_column(sheet, head, line) {
+            Some(by) => split = by,
+            None => return Vec::new(),
+        }
+    }
+    let pairs: Vec<(ColumnHead, Span)> = head.columns.iter().copied().zip(split).collect();
+    // two objects in one row: each with its own columns, after those they share
+    let objects: Vec<usize> = (0..pairs.len())
+        .filter(|&i| pairs[i].0.column == Column::Object)
+        .collect();
+    let places = pairs
+        .iter()
+        .filter(|p| matches!(p.0.column, Column::Ra | Column::Both))
+        .count();
+    if objects.len() > 1 && places >= objects.len() {
+        let shared = &pairs[..objects[0]];
+        return objects
+            .iter()
+            .enumerate()
+            .filter_map(|(n, &from)| {
+                let to = objects.get(n + 1).copied().unwrap_or(pairs.len());
+                let own: Vec<_> = shared.iter().chain(&pairs[from..to]).copied().collect();
+                part(text, head, line, body, &own)
+            })
+            .collect();
+    }
+    part(text, head, line, body, &pairs).into_iter().collect()
+}
+
+/// What was gathered from the cells of one object.
+#[derive(Default)]
+struct Cells {
+    ra: Vec<(Angle, ColumnHead)>,
+    dec: Vec<(Angle, ColumnHead)>,
+    hour_angle: Option<Angle>,
+    altitude: Option<Angle>,
+    azimuth: Option<Angle>,
+    whole: Option<Found>,
+    date: Option<InstantWritten>,
+    time: Option<(Clock, Option<Spanned<Zone>>)>,
+    site: SiteWritten,
+    tags: Vec<Spanned<Tagged>>,
+    said: Statements,
+    /// A coordinate's cell that holds something else than a coordinate.
+    unread: Option<Span>,
+}
+
+fn part(
+    text: &str,
+    head: &Head,
+    line: usize,
+    body: Span,
+    pairs: &[(ColumnHead, Span)],
+) -> Option<Row> {
+    let mut c = Cells::default();
+    for &(column, cell) in pairs {
+        let words = cell.of(text);
+        if !(words.is_empty() || matches!(words, "-" | "--" | "—" | "–" | "…" | "...")) {
+            c.cell(text, head, line, column, cell);
+        }
+    }
+    let found = c.position(head)?;
+    let span = Span::new(body.start, body.end);
+    Some(Row {
+        line,
+        span,
+        said: c.finish(text, line, body),
+        found,
+    })
+}
+
+impl Cells {
+    fn cell(&mut self, text: &str, head: &Head, line: usize, column: ColumnHead, cell: Span) {
+        let words = cell.of(text);
+        let input = Text::window(text, cell);
+        match column.column {
+            Column::Ra => match coordinate(input, true) {
+                Some(a) => self.ra.push((a, column)),
+                None => self.unread = Some(cell),
+            },
+            Column::Dec => match coordinate(input, true) {
+                Some(a) => self.dec.push((a, column)),
+                None => self.unread = Some(cell),
+            },
+            Column::HourAngle => self.hour_angle = coordinate(input, true),
+            Column::Altitude => self.altitude = coordinate(input, false),
+            Column::Azimuth => self.azimuth = coordinate(input, false),
+            Column::Both => {
+                let inner = inside(input, line);
+                self.whole = positions(text, &inner)
+                    .into_iter()
+                    .next()
+                    .or_else(|| forced_pair(&inner, column));
+                if self.whole.is_none() {
+                    self.unread = Some(cell);
+                }
+            }
+            Column::Object => self
+                .said
+                .objects
+                .push(Spanned::new(words.to_string(), cell)),
+            Column::Observer => self
+                .said
+                .observers
+                .push(Spanned::new(words.to_string(), cell)),
+            Column::Instant | Column::Date | Column::Clock => self.when(input),
+            Column::Julian(count) => {
+                if let Ok((rest, number)) = super::number::number(input)
+                    && rest.is_empty()
+                {
+                    let d = Spanned::new(DateWritten::Julian { number, count }, cell);
+                    let i = InstantWritten {
+                        date: Some(d),
+                        clock: None,
+                        zone: None,
+                        until: None,
+                        plus_s: None,
+                        weekday: None,
+                        span: cell,
+                    };
+                    match self.date {
+                        None => self.date = Some(i),
+                        Some(_) => self.said.instants.push(i),
+                    }
+                }
+            }
+            Column::Equinox => {
+                if let Ok((_, t)) = equinox_tag(input).or_else(|_| equinox_year(input)) {
+                    self.tags
+                        .push(Spanned::new(Tagged { weak: false, ..t }, cell));
+                }
+            }
+            Column::Site => self.site_cell(text, input, line, cell),
+            Column::Latitude => self.site.latitude = coordinate(input, false),
+            Column::Longitude => self.site.longitude = coordinate(input, false),
+            Column::Elevation => self.site.elevation_m = height(input, head.feet),
+            Column::Magnitude => {
+                self.said.magnitude = super::number::number(input)
+                    .ok()
+                    .map(|(_, n)| Spanned::new(n.value(), cell));
+            }
+            Column::Constellation => {
+                self.said.constellation = word(input, |w| match w {
+                    Word::ConstellationName(c) => Some(c),
+                    _ => None,
+                })
+                .map(|(_, c)| Spanned::new(c, cell));
+            }
+            Column::Uncertainty | Column::Note => {
+                let note = gather(text, &inside(input, line), &[]);
+                self.said.stets.extend(note.stets);
+                self.said.roles.extend(note.roles);
+                self.said.claims_new = self.said.claims_new.or(note.claims_new);
+            }
+        }
+    }
+
+    fn when(&mut self, input: Text<'_>) {
+        if let Ok((_, i)) = instant(input) {
+            match &mut self.date {
+                Some(d) if d.clock.is_none() && i.date.is_none() => {
+                    d.clock = i.clock;
+                    d.zone = i.zone.or(d.zone.take());
+                    d.span = d.span.cover(i.span);
+                }
+                Some(_) => {}
+                None => self.date = Some(i),
+            }
+        } else if let Ok((rest, c)) = clock(input) {
+            self.time = Some((c, zone(rest).ok().map(|(_, z)| z)));
+        }
+    }
+
+    fn site_cell(&mut self, text: &str, input: Text<'_>, line: usize, cell: Span) {
+        if let Ok((_, s)) = site_coordinates(input) {
+            self.said.sites.push(s);
+            return;
+        }
+        let named = |span: Span| {
+            let words = span
+                .of(text)
+                .trim()
+                .trim_end_matches([',', ';', '(', ':'])
+                .trim();
+            let span = Span::new(span.start, span.start + words.len());
+            (!words.is_empty()).then(|| Spanned::new(words.to_string(), span))
+        };
+        let written = inside(input, line).into_iter().find_map(|a| match a.kind {
+            Kind::Site(s) => Some(*s),
+            _ => None,
+        });
+        self.said.sites.push(match written {
+            Some(s) => SiteWritten {
+                name: named(Span::new(cell.start, s.span.start)),
+                span: cell,
+                ..s
+            },
+            None => SiteWritten {
+                name: named(cell),
+                span: cell,
+                ..SiteWritten::default()
+            },
+        });
+    }
+
+    /// The position of the row: the first pair of its columns; further pairs are other forms of it.
+    fn position(&mut self, head: &Head) -> Option<Found> {
+        if let Some(mut f) = self.whole.take() {
+            f.tags.append(&mut self.tags);
+            return Some(f);
+        }
+        let first_ra = self.ra.first().copied();
+        let first_dec = self.dec.first().copied();
+        let dec = first_dec.map(|d| d.0);
+        let mut found = match (first_ra, self.hour_angle, self.altitude, self.azimuth) {
+            (Some((ra, column)), ..) => found(PositionKind::Equatorial, Some(ra), dec, column.unit),
+            (None, Some(h), ..) if dec.is_some() => {
+                found(PositionKind::HourAngle, Some(h), dec, None)
+            }
+            (None, _, Some(alt), Some(az)) => {
+                found(PositionKind::Horizontal, Some(az), Some(alt), None)
+            }
+            _ if dec.is_some()
+                && (self.date.is_some()
+                    || !self.said.objects.is_empty()
+                    || self.unread.is_some()) =>
+            {
+                found(PositionKind::Equatorial, None, dec, None)
+            }
+            // a head asks for a position, and the cells hold something that is none: said to be unread
+            _ => {
+                let span = self
+                    .unread
+                    .filter(|_| self.date.is_some() && !self.said.objects.is_empty())?;
+                let mut f = found(PositionKind::Equatorial, None, None, None);
+                f.position.span = span;
+                f
+            }
+        };
+        found.tags.append(&mut self.tags);
+        let column_tag = first_ra
+            .and_then(|(_, c)| c.tag)
+            .or(first_dec.and_then(|(_, c)| c.tag))
+            .or(head.tag);
+        if found.tags.is_empty() {
+            self.said.tags.extend(column_tag);
+        }
+        for (n, &(ra, column)) in self.ra.iter().enumerate().skip(1) {
+            if let Some(&(dec, dec_column)) = self.dec.get(n) {
+                let form = self::found(PositionKind::Equatorial, Some(ra), Some(dec), column.unit)
+                    .position;
+                found
+                    .other_forms
+                    .push((form, column.tag.or(dec_column.tag).or(column_tag)));
+            }
+        }
+        Some(found)
+    }
+
+    /// The other statements of the row, put together.
+    fn finish(mut self, text: &str, line: usize, body: Span) -> Statements {
+        if let Some((c, z)) = self.time {
+            match &mut self.date {
+                Some(d) if d.clock.is_none() => {
+                    d.clock = Some(c);
+                    d.zone = z.or(d.zone.take());
+                    d.span = d.span.cover(c.span);
+                }
+                Some(_) => {}
+                None => {
+                    self.date = Some(InstantWritten {
+                        date: None,
+                        clock: Some(c),
+                        zone: z,
+                        until: None,
+                        plus_s: None,
+                        weekday: None,
+                        span: c.span,
+                    });
+                }
+            }
+        }
+        let mut said = self.said;
+        if let Some(d) = self.date {
+            said.instants.insert(0, d);
+        }
+        let mut site = self.site;
+        if site.latitude.is_some() || site.longitude.is_some() {
+            site.signed_field = true;
+            let spans = [
+                site.latitude.map(|a| a.span),
+                site.longitude.map(|a| a.span),
+            ];
+            site.span = spans
+                .into_iter()
+                .flatten()
+                .reduce(Span::cover)
+                .unwrap_or(body);
+            if let Some(named) = said.sites.first().filter(|s| s.latitude.is_none()) {
+                site.name.clone_from(&named.name);
+                said.sites.clear();
+            }
+            said.sites.insert(0, site);
+        } else if let (Some(m), Some(s)) = (site.elevation_m, said.sites.last_mut()) {
+            s.elevation_m = s.elevation_m.or(Some(m));
+        }
+        let beside = [
+            (HorizonQuantity::Altitude, self.altitude),
+            (HorizonQuantity::Azimuth, self.azimuth),
+            (HorizonQuantity::HourAngle, self.hour_angle),
+        ];
+        if !self.ra.is_empty() {
+            for (quantity, angle) in beside {
+                said.horizon
+                    .extend(angle.map(|angle| StatedHorizon { quantity, angle }));
+            }
+        }
+        if said.claims_new.is_none()
+            && let Some(o) = said.objects.first()
+        {
+            let inner = inside(Text::window(text, o.span), line);
+            said.claims_new = inner.iter().find(|a| a.means(Word::New)).map(|a| a.span);
+        }
+        said
+    }
+}
+
+fn inside<'t>(input: Text<'t>, line: usize) -> Vec<Atom<'t>> {
+    let mut inner = Vec::new();
+    atoms(input, line, &mut false, &mut inner);
+    inner
+}
+
+fn found(
+    kind: PositionKind,
+    first: Option<Angle>,
+    second: Option<Angle>,
+    said: Option<AngleUnit>,
+) -> Found {
+    let span = [first, second]
+        .iter()
+        .flatten()
+        .map(|a| a.span)
+        .reduce(Span::cover)
+        .unwrap_or_default();
+    let first_unit = match (kind, first) {
+        (PositionKind::HourAngle, _) => Some(AngleUnit::Hours),
+        (PositionKind::Horizontal, _) => Some(AngleUnit::Degrees),
+        (_, Some(a)) => a.marked_unit().or(said).or(if a.parts().len() > 1 {
+            Some(AngleUnit::Hours)
+        } else {
+            (a.value() >= 24.0).then_some(AngleUnit::Degrees)
+        }),
+        _ => None,
+    };
+    let position = Position {
+        kind,
+        first,
+        second,
+        first_unit,
+        polar_distance: false,
+        zenith_distance: false,
+        azimuth_from_south: false,
+        airless: false,
+        labelled: true,
+        span,
+    };
+    Found {
+        position,
+        other_forms: Vec::new(),
+        tags: Vec::new(),
+        first: 0,
+        end: 0,
+    }
+}
+
+/// A cell that holds one coordinate and nothing else of weight.
+fn coordinate(input: Text<'_>, joined: bool) -> Option<Angle> {
+    let input = input.skip_blanks();
+    let plain = alt((angle, angle_blanks)).parse(input).ok();
+    if let Some((rest, a)) = plain
+        && rest.skip_blanks().is_empty()
+    {
+        let six = a.parts().len() == 1 && a.parts()[0].number.whole_digits >= 6;
+        if !(joined && six) {
+            return Some(a);
+        }
+    }
+    if let Ok((rest, a)) = angle_joined(input)
+        && rest.skip_blanks().is_empty()
+        && joined
+    {
+        return Some(a);
+    }
+    // a footnote's letter or an uncertainty may follow
+    let (rest, a) = plain?;
+    let tail = rest.skip_blanks();
+    let note =
+        tail.as_str().chars().count() <= 2 && !tail.as_str().contains(|c: char| c.is_ascii_digit());
+    (note || super::uncertainty::uncertainty(tail).is_ok()).then_some(a)
+}
+
+fn height(input: Text<'_>, feet: bool) -> Option<Spanned<f64>> {
+    if let Ok((_, m)) = elevation(input) {
+        return Some(m);
+    }
+    let minus = input.peek() == Some('-');
+    let (_, n) = super::number::number(input.skip(usize::from(minus))).ok()?;
+    let metres = n.value() * if feet { 0.3048 } else { 1.0 };
+    Some(Spanned::new(
+        if minus { -metres } else { metres },
+        input.span(),
+    ))
+}
+
+/// A cell headed "position" holds a pair whatever its notation.
+fn forced_pair(inner: &[Atom], column: ColumnHead) -> Option<Found> {
+    let angles: Vec<Angle> = inner
+        .iter()
+        .filter_map(|a| match &a.kind {
+            Kind::Angle(a) | Kind::Joined(a) => Some(**a),
+            Kind::Run(r) => r.angle(0, r.numbers.len().min(3)),
+            _ => None,
+        })
+        .collect();
+    let [ra, dec] = angles[..] else { return None };
+    Some(found(
+        PositionKind::Equatorial,
+        Some(ra),
+        Some(dec),
+        column.unit,
+    ))
+}
