@@ -16,7 +16,11 @@ fn cases(text: &str) -> Vec<Case> {
     let mut found: Vec<Case> = Vec::new();
     for line in text.lines() {
         if let Some(name) = line.strip_prefix("== ") {
-            found.push(Case { name: name.to_string(), sheet: String::new(), meanings: Vec::new() });
+            found.push(Case {
+                name: name.to_string(),
+                sheet: String::new(),
+                meanings: Vec::new(),
+            });
         } else if let Some(case) = found.last_mut() {
             match line.strip_prefix("-> ") {
                 Some(meaning) => case.meanings.push(meaning.to_string()),
@@ -30,7 +34,11 @@ fn cases(text: &str) -> Vec<Case> {
 /// `h 5 34 31.9` or `d -22 00`: degrees and the value of the last digit in arcsec.
 fn told(words: &str) -> (f64, f64) {
     let mut fields = words.split_whitespace();
-    let scale = if fields.next() == Some("h") { 15.0 } else { 1.0 };
+    let scale = if fields.next() == Some("h") {
+        15.0
+    } else {
+        1.0
+    };
     let numbers: Vec<&str> = fields.collect();
     let negative = numbers[0].starts_with('-');
     let mut value = 0.0;
@@ -40,7 +48,10 @@ fn told(words: &str) -> (f64, f64) {
     let last = numbers[numbers.len() - 1];
     let places = last.split_once('.').map_or(0, |(_, p)| p.len());
     let step = 10f64.powi(-(places as i32)) / 60f64.powi(numbers.len() as i32 - 1);
-    (if negative { -value } else { value } * scale, step * scale * 3600.0)
+    (
+        if negative { -value } else { value } * scale,
+        step * scale * 3600.0,
+    )
 }
 
 fn wrong_with(r: &Report, m: &Meant, meaning: &str) -> Vec<String> {
@@ -48,15 +59,30 @@ fn wrong_with(r: &Report, m: &Meant, meaning: &str) -> Vec<String> {
     let said = |i: usize| field.get(i).copied().filter(|f| !matches!(*f, "*" | "-"));
     let mut wrong = Vec::new();
     let p = &r.position;
-    let scale = if p.kind != PositionKind::Horizontal && p.first_unit != Some(AngleUnit::Degrees) { 15.0 } else { 1.0 };
-    let scale = if p.first.is_some_and(|a| a.parts().len() == 1) && p.first_unit.is_none() { 1.0 } else { scale };
+    let scale = if p.kind != PositionKind::Horizontal && p.first_unit != Some(AngleUnit::Degrees) {
+        15.0
+    } else {
+        1.0
+    };
+    let scale = if p.first.is_some_and(|a| a.parts().len() == 1) && p.first_unit.is_none() {
+        1.0
+    } else {
+        scale
+    };
     for (axis, angle, scale) in [(0, p.first, scale), (1, p.second, 1.0)] {
         let (value, step) = told(field[axis]);
         match angle {
             None => wrong.push(format!("coordinate {axis} unread")),
             Some(a) => {
-                if (a.value() * scale - value).abs() > 1e-9 || (a.step() * scale * 3600.0 / step - 1.0).abs() > 1e-9 {
-                    wrong.push(format!("{} ± {} for {}", a.value() * scale, a.step() * scale * 3600.0, field[axis]));
+                if (a.value() * scale - value).abs() > 1e-9
+                    || (a.step() * scale * 3600.0 / step - 1.0).abs() > 1e-9
+                {
+                    wrong.push(format!(
+                        "{} ± {} for {}",
+                        a.value() * scale,
+                        a.step() * scale * 3600.0,
+                        field[axis]
+                    ));
                 }
             }
         }
@@ -70,7 +96,10 @@ fn wrong_with(r: &Report, m: &Meant, meaning: &str) -> Vec<String> {
     if let Some(o) = said(3)
         && r.object.as_ref().map(|o| &*o.value) != Some(o)
     {
-        wrong.push(format!("object {:?}, not {o}", r.object.as_ref().map(|o| &o.value)));
+        wrong.push(format!(
+            "object {:?}, not {o}",
+            r.object.as_ref().map(|o| &o.value)
+        ));
     }
     if let Some(role) = said(4)
         && format!("{:?}", r.role).to_lowercase() != role
@@ -82,7 +111,9 @@ fn wrong_with(r: &Report, m: &Meant, meaning: &str) -> Vec<String> {
         let want_jd = want.and_utc().timestamp_millis() as f64 / 86_400_000.0 + 2_440_587.5;
         match m.instant {
             None => wrong.push("no instant".to_string()),
-            Some(i) if ((i.utc.0 - want_jd) + i.utc.1).abs() * 86400.0 > 0.05 => wrong.push(format!("instant {:?}, not {utc}", i.utc)),
+            Some(i) if ((i.utc.0 - want_jd) + i.utc.1).abs() * 86400.0 > 0.05 => {
+                wrong.push(format!("instant {:?}, not {utc}", i.utc))
+            }
             Some(i) => {
                 if let Some(step) = said(6)
                     && (i.step_s / step.parse::<f64>().unwrap() - 1.0).abs() > 1e-6
@@ -93,9 +124,14 @@ fn wrong_with(r: &Report, m: &Meant, meaning: &str) -> Vec<String> {
         }
     }
     if let Some(place) = said(7) {
-        let want: Vec<f64> = place.split_whitespace().map(|n| n.parse().unwrap()).collect();
+        let want: Vec<f64> = place
+            .split_whitespace()
+            .map(|n| n.parse().unwrap())
+            .collect();
         match &m.site {
-            Some(s) if (s.latitude_deg - want[0]).abs() < 1e-6 && (s.longitude_deg - want[1]).abs() < 1e-6 => {}
+            Some(s)
+                if (s.latitude_deg - want[0]).abs() < 1e-6
+                    && (s.longitude_deg - want[1]).abs() < 1e-6 => {}
             s => wrong.push(format!("site {s:?}, not {place}")),
         }
     }
@@ -103,7 +139,11 @@ fn wrong_with(r: &Report, m: &Meant, meaning: &str) -> Vec<String> {
 }
 
 fn hold(file: &str) {
-    let text = std::fs::read_to_string(format!("{}/tests/reading/{file}", env!("CARGO_MANIFEST_DIR"))).unwrap();
+    let text = std::fs::read_to_string(format!(
+        "{}/tests/reading/{file}",
+        env!("CARGO_MANIFEST_DIR")
+    ))
+    .unwrap();
     let house = House::default();
     let mut bad = 0;
     let all = cases(&text);
@@ -118,7 +158,11 @@ fn hold(file: &str) {
             wrong.push(format!("{} reports, not {}", reports.len(), wanted.len()));
         }
         for (r, meaning) in reports.iter().zip(&wanted) {
-            wrong.extend(wrong_with(r, &reduction::mean(r, &house, house.canonical), meaning));
+            wrong.extend(wrong_with(
+                r,
+                &reduction::mean(r, &house, house.canonical),
+                meaning,
+            ));
         }
         if !wrong.is_empty() {
             bad += 1;

@@ -748,7 +748,6 @@ impl<'t> Finder<'_, 't> {
 
     /// A second form of the declination after the first: `= -03:15:03`, `(-3d 15')`.
     fn second_form(&self, from: usize) -> Option<(Angle, usize)> {
-        let mut g = Gathered::default();
         let mut i = from;
         while let Some(atom) = self.atoms.get(i) {
             match &atom.kind {
