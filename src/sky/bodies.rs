@@ -190,9 +190,9 @@ fn motion(body: Body, moment: &Moment) -> f64 {
     const HOURS: f64 = 0.5;
     let mut later = *moment;
     later.tt.1 += HOURS / 24.0;
-    let step = |pv: &mut [[f64; 3]; 2]| {
-        for i in 0..3 {
-            pv[0][i] += pv[1][i] * HOURS / 24.0;
+    let step = |[place, speed]: &mut [[f64; 3]; 2]| {
+        for (x, v) in place.iter_mut().zip(speed) {
+            *x += *v * HOURS / 24.0;
         }
     };
     step(&mut later.earth.barycentric);
