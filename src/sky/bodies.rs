@@ -39,7 +39,7 @@ impl Body {
     /// What its theory may be off at worst, arcsec (src/sky/data/README.md).
     pub fn theory_arcsec(self) -> f64 {
         match self {
-            Body::Sun => 0.015,
+            Body::Sun => 0.02,
             Body::Moon => 17.0,
             Body::Mercury => 1.9,
             Body::Venus => 11.0,
