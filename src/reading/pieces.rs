@@ -1,0 +1,333 @@
+//! The pieces a position is put together from: the number after a label, the label after a number, units and compass letters.
+
+use super::position::{Axis, Finder, Gathered};
+use super::run::Run;
+use super::scan::Kind;
+use super::words::Word;
+use crate::report::{Angle, AngleUnit, Compass, Mark, Position, PositionKind};
+use crate::span::{Span, Spanned};
+
+impl Finder<'_, '_> {
+    /// The next atom that holds a number, over what may stand between a label and its value.
+    pub(super) fn to_number(&self, from: usize, g: &mut Gathered, lines: bool) -> Option<usize> {
+        let mut line_ends = 0;
+        for i in from..self.atoms.len().min(from + 14) {
+            let atom = &self.atoms[i];
+            match &atom.kind {
+                Kind::Angle(_) | Kind::Run(_) | Kind::Joined(_) => return Some(i),
+                Kind::Equinox(t) => g.tags.push(Spanned::new(*t, atom.span)),
+                Kind::Uncertainty(_) => {}
+                Kind::LineEnd if lines && line_ends == 0 => line_ends += 1,
+                Kind::Mark(c) if "=:,;/|()[]{}~.-–&≈<>*_`\"".contains(*c) => {}
+                Kind::Word(p) => {
+                    if p.means(Word::Degrees) {
+                        g.unit = Some(AngleUnit::Degrees);
+                    } else if p.means(Word::Hours) {
+                        g.unit = Some(AngleUnit::Hours);
+                    } else if self.axis(i).is_some()
+                        || ![
+                            Word::Filler,
+                            Word::And,
+                            Word::At,
+                            Word::Position,
+                            Word::Equinox,
+                            Word::ThatIs,
+                        ]
+                        .iter()
+                        .any(|w| p.means(*w))
+                    {
+                        return None;
+                    }
+                }
+                Kind::Plain => {
+                    let w = atom.span.of(self.text);
+                    if w == "d" || w == "°" {
+                        g.unit = Some(AngleUnit::Degrees);
+                    } else if w == "h" {
+                        g.unit = Some(AngleUnit::Hours);
+                    } else {
+                        return None;
+                    }
+                }
+                _ => return None,
+            }
+        }
+        None
+    }
+
+    /// The next label of one of these kinds, over what may stand between a value and the next label.
+    pub(super) fn label_after(
+        &self,
+        from: usize,
+        wanted: &[Axis],
+        g: &mut Gathered,
+    ) -> Option<usize> {
+        let mut line_ends = 0;
+        for i in from..self.atoms.len().min(from + 12) {
+            let atom = &self.atoms[i];
+            if let Some(axis) = self.axis(i) {
+                return wanted.contains(&axis).then_some(i);
+            }
+            match &atom.kind {
+                Kind::Equinox(t) => g.tags.push(Spanned::new(*t, atom.span)),
+                Kind::Uncertainty(_) => {}
+                Kind::LineEnd if line_ends == 0 => line_ends += 1,
+                Kind::Mark(_) => {}
+                Kind::Word(p)
+                    if [
+                        Word::Filler,
+                        Word::Degrees,
+                        Word::Hours,
+                        Word::At,
+                        Word::Arcseconds,
+                        Word::Airless,
+                    ]
+                    .iter()
+                    .any(|w| p.means(*w)) => {}
+                Kind::Word(p) if p.means(Word::And) => {}
+                _ => return None,
+            }
+        }
+        None
+    }
+
+    /// The atom after separators that may stand between RA and Dec.
+    pub(super) fn after_soft(
+        &self,
+        from: usize,
+        g: &mut Gathered,
+        labelled: bool,
+    ) -> Option<usize> {
+        let mut line_ends = 0;
+        for i in from..self.atoms.len().min(from + 8) {
+            let atom = &self.atoms[i];
+            match &atom.kind {
+                Kind::Angle(_) | Kind::Run(_) | Kind::Joined(_) => return Some(i),
+                Kind::Uncertainty(_) => {}
+                Kind::Equinox(t) => g.tags.push(Spanned::new(*t, atom.span)),
+                Kind::Mark(
+                    ',' | ';' | '/' | '|' | '&' | '(' | ')' | '[' | ']' | '·' | '{' | '}',
+                ) => {}
+                Kind::LineEnd if labelled && line_ends == 0 => line_ends += 1,
+                Kind::Word(p) if p.means(Word::Degrees) || p.means(Word::Hours) => {}
+                Kind::Word(_) if self.axis(i) == Some(Axis::Dec) => {
+                    return self.to_number(i + 1, g, false);
+                }
+                Kind::Word(p) if p.means(Word::And) => {}
+                _ => return None,
+            }
+        }
+        None
+    }
+
+    /// The angle that atom `i` holds, read as this axis; and the atom after it.
+    pub(super) fn angle_at(
+        &self,
+        i: usize,
+        axis: Axis,
+        ra: Option<&Angle>,
+    ) -> Option<(Angle, usize)> {
+        match &self.atoms.get(i)?.kind {
+            Kind::Angle(a) | Kind::Joined(a) => Some((**a, i + 1)),
+            Kind::Run(run) => {
+                let n = run.numbers.len();
+                let decimal = run.numbers.iter().position(|(n, _)| n.places > 0);
+                let most = match (axis, ra) {
+                    // a bare declination has as many parts as its right ascension, unless that is of another notation
+                    (Axis::Dec, Some(ra))
+                        if ra.parts()[0].mark == Mark::Blank && ra.parts().len() == 2 =>
+                    {
+                        let fine = ra.parts()[1].number.places >= 2;
+                        let third_is_seconds = run.numbers.get(2).is_some_and(|(x, _)| {
+                            x.whole_digits == 2 && x.places == 0 && x.mantissa < 60
+                        });
+                        if fine && third_is_seconds { 3 } else { 2 }
+                    }
+                    _ => 3,
+                };
+                let take = decimal.map_or(n, |d| d + 1).min(most).min(n);
+                run.angle(0, take).map(|a| (a, i + 1))
+            }
+            _ => None,
+        }
+    }
+
+    /// Hours or degrees, by its own marks, its notation, or a word beside it.
+    pub(super) fn unit_of(&self, ra: &Angle, said: Option<AngleUnit>) -> Option<AngleUnit> {
+        if let Some(u) = ra.marked_unit() {
+            return Some(u);
+        }
+        if ra.parts().len() > 1 {
+            return said.or(Some(AngleUnit::Hours));
+        }
+        said.or_else(|| (ra.value().abs() >= 24.0).then_some(AngleUnit::Degrees))
+    }
+
+    pub(super) fn unit_after(&self, i: usize) -> Option<AngleUnit> {
+        let atom = self.atoms.get(i)?;
+        let atom = if matches!(atom.kind, Kind::Mark('(' | '[' | ',')) {
+            self.atoms.get(i + 1)?
+        } else {
+            atom
+        };
+        if atom.means(Word::Degrees) {
+            Some(AngleUnit::Degrees)
+        } else if atom.means(Word::Hours) {
+            Some(AngleUnit::Hours)
+        } else {
+            None
+        }
+    }
+
+    /// A second form of the declination after the first: `= -03:15:03`, `(-3d 15')`.
+    pub(super) fn second_form(&self, from: usize) -> Option<(Angle, usize)> {
+        let mut i = from;
+        while let Some(atom) = self.atoms.get(i) {
+            match &atom.kind {
+                Kind::Mark('=' | '(' | ',') => i += 1,
+                Kind::Word(p)
+                    if p.means(Word::Degrees) || p.means(Word::ThatIs) || p.means(Word::Filler) =>
+                {
+                    i += 1
+                }
+                Kind::Angle(_) | Kind::Run(_) => return self.angle_at(i, Axis::Dec, None),
+                Kind::Uncertainty(_) => {
+                    i += 1;
+                }
+                _ => return None,
+            }
+        }
+        None
+    }
+
+    pub(super) fn between_is(&self, from: usize, to: usize, marks: &[char]) -> bool {
+        self.atoms[from.min(to)..to]
+            .iter()
+            .any(|a| matches!(a.kind, Kind::Mark(c) if marks.contains(&c)) || a.means(Word::ThatIs))
+    }
+
+    /// Another notation that could be the same right ascension: unsigned, and close in value.
+    pub(super) fn same_kind_of_ra(
+        &self,
+        ra: &Angle,
+        unit: Option<AngleUnit>,
+        other: &Angle,
+    ) -> bool {
+        if other.sign.is_some() {
+            return false;
+        }
+        let degrees = |a: &Angle, u: Option<AngleUnit>| match u {
+            Some(AngleUnit::Degrees) => a.value(),
+            _ => a.value() * 15.0,
+        };
+        ra.parts().len() != other.parts().len()
+            || (degrees(ra, unit) - degrees(other, self.unit_of(other, None))).abs() < 1.0
+    }
+
+    pub(super) fn compass_atom(&self, i: usize, dec: &Angle) -> Option<Spanned<Compass>> {
+        if dec.compass.is_some() || dec.sign.is_some() {
+            return None;
+        }
+        let atom = self.atoms.get(i)?;
+        let Kind::Word(p) = &atom.kind else {
+            return None;
+        };
+        let point = p.meanings().find_map(|w| match w {
+            Word::Compass(c @ (Compass::North | Compass::South)) => Some(c),
+            _ => None,
+        })?;
+        let words = atom.span.of(self.text);
+        let single = words.chars().filter(|c| c.is_alphabetic()).count() == 1;
+        (!single || words.starts_with(char::is_uppercase)).then_some(Spanned::new(point, atom.span))
+    }
+
+    /// `12.5 arcsec`, `-33.1 mas/yr`, `6".4`: too small a unit for a coordinate.
+    pub(super) fn small_unit_after(&self, end: usize, last: &Angle) -> bool {
+        let marked = last.parts().len() == 1
+            && matches!(
+                last.parts()[0].mark,
+                Mark::Prime | Mark::DoublePrime | Mark::Second | Mark::Minute
+            );
+        marked
+            || last.parts().len() == 1
+                && self.atoms.get(end).is_some_and(|a| {
+                    a.means(Word::Arcseconds)
+                        || a.means(Word::Arcminutes)
+                        || a.is_mark('"')
+                        || a.is_mark('″')
+                        || a.is_mark('′')
+                        || a.span.of(self.text).starts_with("mas")
+                })
+    }
+}
+
+// ---------------------------------------------------------------------------------------------- small judgements on angles
+
+pub(super) fn position(
+    kind: PositionKind,
+    first: Option<Angle>,
+    second: Option<Angle>,
+    unit: Option<AngleUnit>,
+) -> Position {
+    let span = match (first, second) {
+        (Some(a), Some(b)) => a.span.cover(b.span),
+        (Some(a), None) | (None, Some(a)) => a.span,
+        (None, None) => Span::default(),
+    };
+    let first_unit = match kind {
+        PositionKind::HourAngle => unit.or(Some(AngleUnit::Hours)),
+        _ => unit,
+    };
+    Position {
+        kind,
+        first,
+        second,
+        first_unit,
+        polar_distance: false,
+        zenith_distance: false,
+        azimuth_from_south: false,
+        airless: false,
+        labelled: false,
+        span,
+    }
+}
+
+/// The last numbers of a run that stands before a signed declination: a serial number or a day may lead it.
+pub(super) fn ra_before(run: &Run, dec_parts: Option<usize>) -> Option<Angle> {
+    let n = run.numbers.len();
+    let hour_ok = |i: usize| {
+        run.numbers
+            .get(i)
+            .is_some_and(|(x, _)| x.places == 0 && x.mantissa <= 24)
+    };
+    let from = match n {
+        0 => return None,
+        1..=2 => 0,
+        3 => usize::from(dec_parts == Some(2) && !hour_ok(0) && hour_ok(1)),
+        _ => n - 3,
+    };
+    run.angle(from, n)
+}
+
+pub(super) fn sexagesimal(p: &Position) -> bool {
+    p.first.is_some_and(|a| a.parts().len() > 1) && p.second.is_some_and(|a| a.parts().len() > 1)
+}
+
+pub(super) fn same_shape(ra: &Angle, dec: &Angle) -> bool {
+    ra.parts().len() == dec.parts().len() && ra.parts()[0].mark == dec.parts()[0].mark
+}
+
+pub(super) fn plausible(p: &Position) -> bool {
+    sexagesimal(p)
+        || p.second
+            .is_some_and(|d| d.sign.is_some() && d.parts()[0].number.places >= 2)
+}
+
+pub(super) fn in_range(ra: &Angle, dec: &Angle) -> bool {
+    let sixty = |a: &Angle| a.parts()[1..].iter().all(|p| p.number.value() < 60.0);
+    let hours = ra.parts().len() > 1 && ra.marked_unit() != Some(AngleUnit::Degrees);
+    ra.value() < if hours { 24.0 } else { 360.0 }
+        && dec.value().abs() <= 90.0
+        && sixty(ra)
+        && sixty(dec)
+}
