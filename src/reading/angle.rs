@@ -232,10 +232,7 @@ pub fn angle_blanks(input: Text<'_>) -> Parsed<'_, Angle> {
         let Ok((after, value)) = number(here) else {
             break;
         };
-        // 54 18 is no angle where 36x follows: seconds are never dropped
-        let third = parts.len() == 2;
-        let ends = field_ends(after, third);
-        if value.whole_digits > 2 || !ends && (third || value.places > 0) {
+        if value.whole_digits > 2 || !field_ends(after, parts.len() == 2) {
             break;
         }
         if let Some(p) = parts.last_mut() {
