@@ -1,9 +1,7 @@
 //! The grammar is run: every example beside a production is tried on `grammar/*.pest` and on the nom parser of the same name.
 
 use colure::reading::text::Text;
-use colure::reading::{
-    angle, equinox, instant, marks, number, run, site, stet, uncertainty,
-};
+use colure::reading::{angle, equinox, instant, marks, number, run, site, stet, uncertainty};
 use std::collections::{BTreeMap, BTreeSet};
 use std::fs;
 use std::path::{Path, PathBuf};
@@ -76,7 +74,7 @@ fn examples_are_read_alike() {
     for (name, examples) in examples() {
         for example in examples {
             let text = example.text();
-            let (nom, pest) = both(&vm, &name, &text);
+            let (nom, pest) = both(vm, &name, &text);
             let wanted = example.taken.then_some(example.head.len());
             let right = |found: Option<usize>| found == wanted;
             if !right(nom) || !right(pest) {
@@ -86,18 +84,19 @@ fn examples_are_read_alike() {
             }
         }
     }
-    assert!(wrong.is_empty(), "{} examples\n{}", wrong.len(), wrong.join("\n"));
+    assert!(
+        wrong.is_empty(),
+        "{} examples\n{}",
+        wrong.len(),
+        wrong.join("\n")
+    );
 }
 
 /// Every example is also tried on every other production: there the two need only agree with each other.
 #[test]
 fn examples_of_others_are_read_alike() {
     let vm = grammar::vm();
-    let texts: BTreeSet<String> = examples()
-        .values()
-        .flatten()
-        .map(|e| e.text())
-        .collect();
+    let texts: BTreeSet<String> = examples().values().flatten().map(|e| e.text()).collect();
     let mut wrong = Vec::new();
     let mut tried = 0;
     for (_, name, _) in NOM {
@@ -107,14 +106,17 @@ fn examples_of_others_are_read_alike() {
                 .char_indices()
                 .filter(|(i, _)| *i == 0 || text[..*i].ends_with([' ', ',', '(']))
                 .map(|(i, _)| &text[i..]);
-            let cut = text.char_indices().next_back().map_or("", |(i, _)| &text[..i]);
+            let cut = text
+                .char_indices()
+                .next_back()
+                .map_or("", |(i, _)| &text[..i]);
             for s in starts.chain([cut]) {
                 // a fifth of them, always the same ones
                 if s != text && (s.bytes().map(usize::from).sum::<usize>() + name.len()) % 5 != 0 {
                     continue;
                 }
                 tried += 1;
-                let (nom, pest) = both(&vm, name, s);
+                let (nom, pest) = both(vm, name, s);
                 if nom != pest {
                     wrong.push(format!("{name}: {s:?} nom {nom:?}, grammar {pest:?}"));
                 }
@@ -122,15 +124,31 @@ fn examples_of_others_are_read_alike() {
         }
     }
     println!("{tried} tried");
-    assert!(wrong.is_empty(), "{} of {tried}\n{}", wrong.len(), wrong[..wrong.len().min(60)].join("\n"));
+    assert!(
+        wrong.is_empty(),
+        "{} of {tried}\n{}",
+        wrong.len(),
+        wrong[..wrong.len().min(60)].join("\n")
+    );
 }
 
 #[test]
 fn productions_and_parsers_have_the_same_names() {
     // nom: every public function from Text to Parsed, file by file
     let mut nom = BTreeSet::new();
-    for file in ["number", "marks", "angle", "equinox", "instant", "site", "uncertainty", "stet", "run"] {
-        let source = fs::read_to_string(root().join(format!("src/reading/{file}.rs"))).expect("source");
+    for file in [
+        "number",
+        "marks",
+        "angle",
+        "equinox",
+        "instant",
+        "site",
+        "uncertainty",
+        "stet",
+        "run",
+    ] {
+        let source =
+            fs::read_to_string(root().join(format!("src/reading/{file}.rs"))).expect("source");
         for line in source.lines() {
             if let Some(rest) = line.strip_prefix("pub fn ")
                 && let Some((name, rest)) = rest.split_once("(input: Text<'_>) -> Parsed<")
@@ -141,7 +159,10 @@ fn productions_and_parsers_have_the_same_names() {
             }
         }
     }
-    let tried: BTreeSet<_> = NOM.iter().map(|(m, n, _)| (m.to_string(), n.to_string())).collect();
+    let tried: BTreeSet<_> = NOM
+        .iter()
+        .map(|(m, n, _)| (m.to_string(), n.to_string()))
+        .collect();
     assert_eq!(nom, tried, "the list above against src/reading");
     // the grammar: every rule written `name = @{`, in the file of the same name
     let mut pest = BTreeSet::new();
@@ -156,18 +177,36 @@ fn productions_and_parsers_have_the_same_names() {
             }
         }
     }
-    assert_eq!(nom, pest, "the parsers in src/reading against the productions in grammar/");
+    assert_eq!(
+        nom, pest,
+        "the parsers in src/reading against the productions in grammar/"
+    );
     // and each has its examples, good and bad
     let examples = examples();
     for (_, name) in &nom {
-        let own = examples.get(name).unwrap_or_else(|| panic!("no grammar/examples/{name}.txt"));
-        assert!(own.iter().any(|e| e.taken) && own.iter().any(|e| !e.taken), "{name}: good and bad examples");
+        let own = examples
+            .get(name)
+            .unwrap_or_else(|| panic!("no grammar/examples/{name}.txt"));
+        assert!(
+            own.iter().any(|e| e.taken) && own.iter().any(|e| !e.taken),
+            "{name}: good and bad examples"
+        );
     }
-    assert_eq!(examples.len(), nom.len(), "an example file without a production");
+    assert_eq!(
+        examples.len(),
+        nom.len(),
+        "an example file without a production"
+    );
 }
 
 /// Atomic rules that are only parts of productions.
-const HELPERS: &[&str] = &["decimal", "point_decimal", "comma_decimal", "whole", "decimal_date"];
+const HELPERS: &[&str] = &[
+    "decimal",
+    "point_decimal",
+    "comma_decimal",
+    "whole",
+    "decimal_date",
+];
 
 struct Example {
     taken: bool,
@@ -187,7 +226,11 @@ fn examples() -> BTreeMap<String, Vec<Example>> {
     let folder = root().join("grammar/examples");
     for entry in fs::read_dir(folder).expect("grammar/examples") {
         let path = entry.expect("entry").path();
-        let name = path.file_stem().expect("name").to_string_lossy().into_owned();
+        let name = path
+            .file_stem()
+            .expect("name")
+            .to_string_lossy()
+            .into_owned();
         let mut own = Vec::new();
         for line in fs::read_to_string(&path).expect("text").lines() {
             let (taken, rest) = match line.split_at_checked(2) {

@@ -95,6 +95,9 @@ pub fn angle_degrees(input: Text<'_>) -> Parsed<'_, Angle> {
                 rest = r;
                 parts.push(seconds);
             }
+        } else if marked(rest.skip_blanks(), double_prime).is_ok() {
+            // 67° 32″ 40′: the primes exchanged; 67° alone would be a misreading
+            return no(input);
         }
     }
     if degrees.mark == Mark::Broken && parts.len() == 1 {
@@ -410,6 +413,7 @@ fn unmarked(input: Text<'_>) -> Parsed<'_, Part> {
     let other = hour_mark(next).is_ok()
         || degree_mark(next).is_ok()
         || prime(next).is_ok()
+        || double_prime(next).is_ok()
         || minute_letter(next).is_ok()
         || after.peek() == Some(':')
         || after.peek() == Some('/')

@@ -19,20 +19,16 @@ fn letters<'a>(input: Text<'a>, forms: &[&str]) -> Option<Text<'a>> {
     forms.iter().find_map(|f| {
         let head = s.get(..f.len())?;
         let next = s[f.len()..].chars().next();
-        let goes_on = |c: char| {
-            c.is_alphabetic() || c == '_' || f.ends_with('.') && c.is_ascii_digit()
-        };
-        (head.eq_ignore_ascii_case(f) && !next.is_some_and(goes_on))
-            .then(|| input.skip(f.len()))
+        let goes_on =
+            |c: char| c.is_alphabetic() || c == '_' || f.ends_with('.') && c.is_ascii_digit();
+        (head.eq_ignore_ascii_case(f) && !next.is_some_and(goes_on)).then(|| input.skip(f.len()))
     })
 }
 
 /// `h`, `hr`, `hrs`, `ʰ`, `^h`, or the word in any of the languages.
 pub fn hour_mark(input: Text<'_>) -> Parsed<'_, Mark> {
     let rest = any_of(input, &["ʰ", "^h", "^{h}", "$^h$", "<sup>h</sup>"])
-        .or_else(|| {
-            letters(input, &["hrs.", "hrs", "hr.", "hr", "h.", "h"])
-        })
+        .or_else(|| letters(input, &["hrs.", "hrs", "hr.", "hr", "h.", "h"]))
         .or_else(|| says(input, Word::Hours));
     rest.map_or_else(|| no(input), |r| Ok((r, Mark::Hour)))
 }

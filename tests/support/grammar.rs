@@ -8,16 +8,44 @@ use std::path::Path;
 #[path = "../../src/reading/fold.rs"]
 mod fold;
 
-/// The grammar, ready to run.
-pub fn vm() -> pest_vm::Vm {
-    let mut text = word_rules();
+/// The grammar, ready to run; made once.
+pub fn vm() -> &'static pest_vm::Vm {
+    static VM: std::sync::OnceLock<pest_vm::Vm> = std::sync::OnceLock::new();
+    VM.get_or_init(made)
+}
+
+/// The words are checked by themselves and stand in the grammar by name: checked as one, the two take half a minute.
+fn made() -> pest_vm::Vm {
+    let words = word_rules();
+    let mut text = String::new();
+    let mut names = BTreeSet::new();
+    for (name, _) in words.lines().filter_map(|l| l.split_once(" = ")) {
+        if name.chars().all(|c| c.is_ascii_alphanumeric() || c == '_') {
+            writeln!(text, "{name} = {{ \"word\" }}").expect("to a string");
+            names.insert(name.to_string());
+        }
+    }
     for (_, source) in files() {
         text.push_str(&source);
     }
-    let (_, rules) = pest_meta::parse_and_optimize(&text).unwrap_or_else(|errors| {
-        panic!("the grammar does not stand:\n{}", errors.iter().map(|e| e.to_string()).collect::<Vec<_>>().join("\n"))
-    });
+    let mut rules = optimized(&text);
+    rules.retain(|r| !names.contains(&r.name));
+    rules.extend(optimized(&words));
     pest_vm::Vm::new(rules)
+}
+
+fn optimized(text: &str) -> Vec<pest_meta::optimizer::OptimizedRule> {
+    match pest_meta::parse_and_optimize(text) {
+        Ok((_, rules)) => rules,
+        Err(errors) => panic!(
+            "the grammar does not stand:\n{}",
+            errors
+                .iter()
+                .map(|e| e.to_string())
+                .collect::<Vec<_>>()
+                .join("\n")
+        ),
+    }
 }
 
 /// The end of what a production takes from the beginning of `text`.
@@ -38,7 +66,12 @@ pub fn files() -> Vec<(String, String)> {
     files.sort();
     files
         .into_iter()
-        .map(|p| (p.file_stem().expect("name").to_string_lossy().into_owned(), fs::read_to_string(&p).expect("text")))
+        .map(|p| {
+            (
+                p.file_stem().expect("name").to_string_lossy().into_owned(),
+                fs::read_to_string(&p).expect("text"),
+            )
+        })
         .collect()
 }
 
@@ -52,14 +85,19 @@ pub fn words() -> BTreeMap<String, BTreeSet<String>> {
         for (key, value) in file {
             let mut add = |key: String, list: &serde_yaml::Value| {
                 for word in list.as_sequence().into_iter().flatten() {
-                    found.entry(key.clone()).or_default().insert(word.as_str().expect("a word").to_string());
+                    found
+                        .entry(key.clone())
+                        .or_default()
+                        .insert(word.as_str().expect("a word").to_string());
                 }
             };
             match (&*key, &value) {
                 ("language", _) => {}
                 (_, serde_yaml::Value::Mapping(map)) => {
                     for (k, list) in map {
-                        let k = k.as_str().map_or_else(|| k.as_u64().unwrap_or(0).to_string(), str::to_string);
+                        let k = k
+                            .as_str()
+                            .map_or_else(|| k.as_u64().unwrap_or(0).to_string(), str::to_string);
                         add(format!("{key} {k}"), list);
                     }
                 }
@@ -93,16 +131,31 @@ fn entry(word: &str, letters: &mut BTreeSet<char>) -> Entry {
     } else {
         let parts: Vec<String> = folded
             .chars()
-            .map(|c| if c == ' ' { "fold_blank+".to_string() } else { letters.insert(c); format!("fold_{:x}", c as u32) })
+            .map(|c| {
+                if c == ' ' {
+                    "fold_blank+".to_string()
+                } else {
+                    letters.insert(c);
+                    format!("fold_{:x}", c as u32)
+                }
+            })
             .collect();
         expression.push_str(&parts.join(" ~ "));
     }
     if word.ends_with(char::is_alphabetic) {
-        expression.push_str(if dot { " ~ (\".\" | !ALPHABETIC)" } else { " ~ !ALPHABETIC" });
+        expression.push_str(if dot {
+            " ~ (\".\" | !ALPHABETIC)"
+        } else {
+            " ~ !ALPHABETIC"
+        });
     } else if dot {
         expression.push_str(" ~ \".\"?");
     }
-    Entry { folded, exact, expression }
+    Entry {
+        folded,
+        exact,
+        expression,
+    }
 }
 
 /// Longest first, so that the first match is the longest.
@@ -119,10 +172,19 @@ fn word_rules() -> String {
     let mut letters = BTreeSet::new();
     let mut text = String::new();
     let of = |keys: &[&str]| -> Vec<&String> {
-        let own = |k: &str| keys.iter().any(|w| k == *w || k.strip_prefix(w).is_some_and(|r| r.starts_with(' ')));
-        words.iter().filter(|(k, _)| own(k)).flat_map(|(_, list)| list).collect()
+        let own = |k: &str| {
+            keys.iter()
+                .any(|w| k == *w || k.strip_prefix(w).is_some_and(|r| r.starts_with(' ')))
+        };
+        words
+            .iter()
+            .filter(|(k, _)| own(k))
+            .flat_map(|(_, list)| list)
+            .collect()
     };
-    let phrase = |keys: &[&str]| -> Vec<&String> { of(keys).into_iter().filter(|w| w.contains(' ')).collect() };
+    let phrase = |keys: &[&str]| -> Vec<&String> {
+        of(keys).into_iter().filter(|w| w.contains(' ')).collect()
+    };
     for (name, keys) in [
         ("hours", &["hours"][..]),
         ("degrees", &["degrees"]),
@@ -152,7 +214,17 @@ fn word_rules() -> String {
         ("at", &["at"]),
         ("half_day", &["am", "pm"]),
         ("universal", &["universal"]),
-        ("other_scale", &["ut1", "terrestrial", "barycentric", "atomic", "local-time", "zone-abbreviation"]),
+        (
+            "other_scale",
+            &[
+                "ut1",
+                "terrestrial",
+                "barycentric",
+                "atomic",
+                "local-time",
+                "zone-abbreviation",
+            ],
+        ),
         ("clock_scale", &["local-time", "zone-abbreviation"]),
         ("julian", &["julian"]),
         ("modified_julian", &["modified-julian"]),
@@ -160,8 +232,16 @@ fn word_rules() -> String {
     ] {
         text.push_str(&rule(name, &of(keys), &mut letters));
     }
-    text.push_str(&rule("place_phrase", &phrase(&["mean", "apparent"]), &mut letters));
-    text.push_str(&rule("apparent_phrase", &phrase(&["apparent"]), &mut letters));
+    text.push_str(&rule(
+        "place_phrase",
+        &phrase(&["mean", "apparent"]),
+        &mut letters,
+    ));
+    text.push_str(&rule(
+        "apparent_phrase",
+        &phrase(&["apparent"]),
+        &mut letters,
+    ));
     // a word that only fills, and is not the beginning of a longer phrase
     let all: Vec<&String> = words.values().flatten().collect();
     let mut fillers = of(&["filler"]);
@@ -176,7 +256,11 @@ fn word_rules() -> String {
                 .iter()
                 .filter(|w| !fillers.contains(w))
                 .map(|w| entry(w, &mut letters))
-                .filter(|e| e.folded.len() > own.folded.len() && e.folded.starts_with(&own.folded) && !e.exact)
+                .filter(|e| {
+                    e.folded.len() > own.folded.len()
+                        && e.folded.starts_with(&own.folded)
+                        && !e.exact
+                })
                 .map(|e| e.expression)
                 .collect();
             if longer.is_empty() {
@@ -187,7 +271,12 @@ fn word_rules() -> String {
             }
         })
         .collect();
-    writeln!(text, "phrase_filler = {{\n    {}\n}}", choices.join("\n  | ")).expect("to a string");
+    writeln!(
+        text,
+        "phrase_filler = {{\n    {}\n}}",
+        choices.join("\n  | ")
+    )
+    .expect("to a string");
     // folding spelt out: every character that folds to the one wanted
     let folding: Vec<(char, char)> = ('\u{1}'..'\u{3000}').map(|c| (fold::fold(c), c)).collect();
     let forms = |wanted: char| -> Vec<String> {
@@ -197,9 +286,20 @@ fn word_rules() -> String {
             .map(|(_, c)| format!("\"\\u{{{:02x}}}\"", *c as u32))
             .collect()
     };
-    writeln!(text, "fold_blank = _{{ \"-\" | \"_\" | {} }}", forms(' ').join(" | ")).expect("to a string");
+    writeln!(
+        text,
+        "fold_blank = _{{ \"-\" | \"_\" | {} }}",
+        forms(' ').join(" | ")
+    )
+    .expect("to a string");
     for c in letters {
-        writeln!(text, "fold_{:x} = _{{ {} }}", c as u32, forms(c).join(" | ")).expect("to a string");
+        writeln!(
+            text,
+            "fold_{:x} = _{{ {} }}",
+            c as u32,
+            forms(c).join(" | ")
+        )
+        .expect("to a string");
     }
     text
 }
