@@ -95,6 +95,9 @@ pub fn angle_degrees(input: Text<'_>) -> Parsed<'_, Angle> {
                 rest = r;
                 parts.push(seconds);
             }
+        } else if marked(rest.skip_blanks(), double_prime).is_ok() {
+            // 67° 32″ 40′: the primes exchanged; 67° alone would be a misreading
+            return no(input);
         }
     }
     if degrees.mark == Mark::Broken && parts.len() == 1 {
@@ -154,7 +157,7 @@ pub fn angle_colons(input: Text<'_>) -> Parsed<'_, Angle> {
             return no(input);
         }
     }
-    for _ in 0..2 {
+    for field in 0..2 {
         let here = if rest.as_str().starts_with(' ') {
             rest.skip(1)
         } else {
@@ -166,13 +169,15 @@ pub fn angle_colons(input: Text<'_>) -> Parsed<'_, Angle> {
         if value.whole_digits > 2 {
             return no(input);
         }
-        let more = value.places == 0
+        let more = field == 0
+            && value.places == 0
             && after.peek() == Some(':')
             && after
                 .skip(1)
-                .skip_blanks()
-                .peek()
-                .is_some_and(|c| c.is_ascii_digit());
+                .as_str()
+                .trim_start_matches(' ')
+                .starts_with(|c: char| c.is_ascii_digit())
+            && !after.as_str().starts_with(":  ");
         parts.push(Part {
             number: value,
             mark: if more { Mark::Colon } else { Mark::None },
@@ -186,18 +191,23 @@ pub fn angle_colons(input: Text<'_>) -> Parsed<'_, Angle> {
     }
     // a fourth field, or a letter glued to it, makes it something else
     if parts.len() < 2
-        || rest.peek() == Some(':') && rest.as_str()[1..].starts_with(|c: char| c.is_ascii_digit())
+        || rest.peek() == Some(':')
+            && rest
+                .skip(1)
+                .skip_blanks()
+                .peek()
+                .is_some_and(|c| c.is_ascii_digit())
     {
         return no(input);
     }
     let (rest, last) = match alt((second_letter, double_prime)).parse(rest) {
-        Ok((r, m)) if parts.len() == 3 => (r, m),
+        Ok((r, m)) if parts.len() == 3 && !point_glued(rest) => (r, m),
         _ => (rest, Mark::None),
     };
     if let Some(p) = parts.last_mut() {
         p.mark = last;
     }
-    if rest.peek().is_some_and(|c| c.is_alphabetic()) {
+    if rest.peek().is_some_and(|c| c.is_alphabetic()) && !point_glued(rest) {
         return no(input);
     }
     finish_compass(input, rest, s, &parts, before)
@@ -225,7 +235,7 @@ pub fn angle_blanks(input: Text<'_>) -> Parsed<'_, Angle> {
         let Ok((after, value)) = number(here) else {
             break;
         };
-        if value.whole_digits > 2 || glued_but_compass(after) {
+        if value.whole_digits > 2 || !field_ends(after, parts.len() == 2) {
             break;
         }
         if let Some(p) = parts.last_mut() {
@@ -238,7 +248,11 @@ pub fn angle_blanks(input: Text<'_>) -> Parsed<'_, Angle> {
         });
         rest = after;
     }
-    if glued_but_compass(rest) {
+    let ends = match parts.len() {
+        1 => point_glued(rest) || !glued(rest),
+        n => field_ends(rest, n == 3),
+    };
+    if !ends {
         return no(input);
     }
     let last = if parts.len() == 3 {
@@ -247,6 +261,7 @@ pub fn angle_blanks(input: Text<'_>) -> Parsed<'_, Angle> {
         alt((minute_letter, prime)).parse(rest)
     };
     if parts.len() > 1
+        && !point_glued(rest)
         && let Ok((r, mark)) = last
     {
         let n = parts.len();
@@ -256,6 +271,21 @@ pub fn angle_blanks(input: Text<'_>) -> Parsed<'_, Angle> {
         rest = r;
     }
     finish_compass(input, rest, s, &parts, before)
+}
+
+/// A compass letter directly after the digits: `54 18 36S` is south, and no seconds' mark.
+fn point_glued(rest: Text<'_>) -> bool {
+    compass(rest).is_ok_and(|(r, _)| !r.peek().is_some_and(char::is_alphanumeric))
+}
+
+/// Nothing glued to the digits but a compass letter or the mark that belongs there.
+fn field_ends(rest: Text<'_>, seconds: bool) -> bool {
+    let mark = if seconds {
+        alt((second_letter, double_prime)).parse(rest)
+    } else {
+        alt((minute_letter, prime)).parse(rest)
+    };
+    !glued(rest) || point_glued(rest) || mark.is_ok_and(|(r, _)| !glued(r))
 }
 
 /// No separators at all, under a label or in a compact pair: `053431.2`, `-2200.5`, `0534`.
@@ -383,6 +413,7 @@ fn unmarked(input: Text<'_>) -> Parsed<'_, Part> {
     let other = hour_mark(next).is_ok()
         || degree_mark(next).is_ok()
         || prime(next).is_ok()
+        || double_prime(next).is_ok()
         || minute_letter(next).is_ok()
         || after.peek() == Some(':')
         || after.peek() == Some('/')
@@ -405,15 +436,6 @@ fn unmarked(input: Text<'_>) -> Parsed<'_, Part> {
 /// A minutes part never carries a double prime.
 fn double_prime_as_none(input: Text<'_>) -> Parsed<'_, Mark> {
     no(input)
-}
-
-/// As [`glued`], but a compass letter may be glued on: `71 22 09E`.
-fn glued_but_compass(rest: Text<'_>) -> bool {
-    let mut next = rest.as_str().chars();
-    let letter = next
-        .next()
-        .is_some_and(|c| matches!(c, 'N' | 'S' | 'E' | 'W' | 'O'));
-    glued(rest) && !(letter && !next.next().is_some_and(char::is_alphanumeric))
 }
 
 /// A letter, digit or underscore directly after: the number is part of something else.

@@ -15,9 +15,10 @@ pub fn instant(input: Text<'_>) -> Parsed<'_, InstantWritten> {
 
 /// `2012 Sep 25 09:13 UT`, `2010 Aug 27.2250 UT`, `Tue, 5 March 2024, 22:31 CET`, `2019-10-22T04:53:00Z`, `5.3.2024`.
 fn dated(input: Text<'_>) -> Parsed<'_, InstantWritten> {
+    // "Mar." is a Tuesday in four languages and March in three: a weekday has its date after it
     let (rest, weekday) = match weekday(input) {
-        Ok((rest, day)) => (skip_comma(rest), Some(day)),
-        Err(_) => (input, None),
+        Ok((rest, day)) if date_may_follow(skip_comma(rest)) => (skip_comma(rest), Some(day)),
+        _ => (input, None),
     };
     // "UT 2012 Sep 25 09:13": the scale may stand first
     let (rest, first_zone) = match universal(rest) {
@@ -63,6 +64,12 @@ fn dated(input: Text<'_>) -> Parsed<'_, InstantWritten> {
     Ok((end, found))
 }
 
+/// A date, or a scale and a date.
+fn date_may_follow(input: Text<'_>) -> bool {
+    let after = universal(input).map_or(input, |(r, _)| r.skip_blanks());
+    date(input).is_ok() || date(after).is_ok()
+}
+
 /// `22:31 UT on 2024 March 5`, `09:13 UT`, `10:40 pm EST, 8/14/27`.
 fn clock_then_date(input: Text<'_>) -> Parsed<'_, InstantWritten> {
     let (rest, c) = clock(input).or_else(|_| loose_clock(input))?;
@@ -90,7 +97,9 @@ fn clock_then_date(input: Text<'_>) -> Parsed<'_, InstantWritten> {
     {
         next = after.skip_blanks();
     }
-    if let Ok((r, day)) = weekday(next) {
+    if let Ok((r, day)) = weekday(next)
+        && date(skip_comma(r)).is_ok()
+    {
         found.weekday = Some(day);
         next = skip_comma(r);
     }
@@ -208,18 +217,9 @@ fn date_year_first(input: Text<'_>) -> Parsed<'_, DateWritten> {
         return done(input, r, year, 4, month.mantissa as u32, day, to_day, false);
     }
     let rest = rest.skip_blanks();
-    let rest = if rest.peek().is_some_and(|c| is_dash(c) || c == ',') {
-        rest.skip(1).skip_blanks()
-    } else {
-        rest
-    };
+    let rest = skip_dash(rest);
     let (rest, month) = month(rest)?;
-    let rest = rest.skip_blanks();
-    let rest = if rest.peek().is_some_and(|c| is_dash(c) || c == ',') {
-        rest.skip(1).skip_blanks()
-    } else {
-        rest
-    };
+    let rest = skip_dash(rest.skip_blanks());
     let (rest, (day, to_day)) = day(rest)?;
     done(input, rest, year, 4, month, day, to_day, false)
 }
@@ -492,6 +492,14 @@ fn joint(input: Text<'_>) -> Text<'_> {
     rest
 }
 
+/// A dash or a comma, and the blanks after it.
+fn skip_dash(input: Text<'_>) -> Text<'_> {
+    match input.peek() {
+        Some(c) if is_dash(c) || c == ',' => input.skip(c.len_utf8()).skip_blanks(),
+        _ => input,
+    }
+}
+
 fn skip_comma(input: Text<'_>) -> Text<'_> {
     let rest = input.skip_blanks();
     if rest.peek().is_some_and(|c| c == ',' || c == ';') {
@@ -514,7 +522,10 @@ pub fn clock(input: Text<'_>) -> Parsed<'_, Clock> {
         Some(':') => {
             let (rest, minute) = number(rest.skip(1))?;
             match rest.peek() {
-                Some(':') if minute.places == 0 => {
+                Some(':')
+                    if minute.places == 0
+                        && rest.skip(1).peek().is_some_and(|c| c.is_ascii_digit()) =>
+                {
                     let (rest, second) = number(rest.skip(1))?;
                     (rest, minute, Some(second))
                 }
@@ -686,7 +697,7 @@ fn clock_after_date(input: Text<'_>) -> Option<(Text<'_>, Clock)> {
                     .skip(next.peek().map_or(1, char::len_utf8))
                     .peek()
                     .is_some_and(|c| c.is_ascii_digit());
-            let written = &rest.as_str()[..r.at() - rest.at()];
+            let written = &rest.as_str()[..c.span.end - rest.at()];
             if signed && offset(r).is_err() && until(r).is_none()
                 || c.pm.is_none()
                     && zone(r).is_err()
@@ -803,6 +814,9 @@ fn offset(input: Text<'_>) -> Parsed<'_, i32> {
     let (after, h, m) = match d.as_str().len() {
         2 if after.peek() == Some(':') => {
             let (r, m) = digits(after.skip(1))?;
+            if m.as_str().len() != 2 {
+                return no(input);
+            }
             (r, d.as_str(), m.as_str())
         }
         4 => (after, &d.as_str()[..2], &d.as_str()[2..]),
@@ -830,14 +844,14 @@ fn short_offset(input: Text<'_>) -> Parsed<'_, i32> {
         _ => return no(input),
     };
     let (after, h) = integer(rest.skip(rest.peek().map_or(1, char::len_utf8)))?;
-    if h.mantissa > 14 || after.peek().is_some_and(|c| c.is_alphanumeric()) {
-        return no(input);
-    }
     let after = if after.peek() == Some('h') {
         after.skip(1)
     } else {
         after
     };
+    if h.mantissa > 14 || after.peek().is_some_and(|c| c.is_alphanumeric()) {
+        return no(input);
+    }
     let h = h.mantissa as i32 * 60;
     Ok((after, if negative { -h } else { h }))
 }

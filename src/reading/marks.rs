@@ -13,25 +13,23 @@ fn any_of<'a>(input: Text<'a>, forms: &[&str]) -> Option<Text<'a>> {
         .map(|f| input.skip(f.len()))
 }
 
-/// A letter or abbreviation that no other letter follows.
+/// A letter or abbreviation that no other letter follows. The point of `h.` is left to decimals after it: `h.5`.
 fn letters<'a>(input: Text<'a>, forms: &[&str]) -> Option<Text<'a>> {
     let s = input.as_str();
     forms.iter().find_map(|f| {
         let head = s.get(..f.len())?;
         let next = s[f.len()..].chars().next();
-        (head.eq_ignore_ascii_case(f) && !next.is_some_and(|c| c.is_alphabetic() || c == '_'))
-            .then(|| input.skip(f.len()))
+        let goes_on =
+            |c: char| c.is_alphabetic() || c == '_' || f.ends_with('.') && c.is_ascii_digit();
+        (head.eq_ignore_ascii_case(f) && !next.is_some_and(goes_on)).then(|| input.skip(f.len()))
     })
 }
 
 /// `h`, `hr`, `hrs`, `ʰ`, `^h`, or the word in any of the languages.
 pub fn hour_mark(input: Text<'_>) -> Parsed<'_, Mark> {
     let rest = any_of(input, &["ʰ", "^h", "^{h}", "$^h$", "<sup>h</sup>"])
-        .or_else(|| {
-            letters(input, &["hrs.", "hrs", "hr.", "hr", "h.", "h"])
-                .filter(|r| !swallows_decimals(input, *r))
-        })
-        .or_else(|| says(input, Word::Hours).filter(|_| !input.as_str().starts_with('h')));
+        .or_else(|| letters(input, &["hrs.", "hrs", "hr.", "hr", "h.", "h"]))
+        .or_else(|| says(input, Word::Hours));
     rest.map_or_else(|| no(input), |r| Ok((r, Mark::Hour)))
 }
 
@@ -70,7 +68,7 @@ pub fn degree_mark(input: Text<'_>) -> Parsed<'_, Mark> {
 pub fn minute_letter(input: Text<'_>) -> Parsed<'_, Mark> {
     let rest = any_of(input, &["ᵐ", "^m", "^{m}", "<sup>m</sup>"])
         .or_else(|| letters(input, &["mins", "min.", "min", "m"]))
-        .or_else(|| says(input, Word::Minutes).filter(|_| !input.as_str().starts_with('m')));
+        .or_else(|| says(input, Word::Minutes));
     rest.map_or_else(|| no(input), |r| Ok((r, Mark::Minute)))
 }
 
@@ -78,7 +76,7 @@ pub fn minute_letter(input: Text<'_>) -> Parsed<'_, Mark> {
 pub fn second_letter(input: Text<'_>) -> Parsed<'_, Mark> {
     let rest = any_of(input, &["ˢ", "^s", "^{s}", "<sup>s</sup>"])
         .or_else(|| letters(input, &["secs", "sec.", "sec", "s"]))
-        .or_else(|| says(input, Word::Seconds).filter(|_| !input.as_str().starts_with('s')));
+        .or_else(|| says(input, Word::Seconds));
     rest.map_or_else(|| no(input), |r| Ok((r, Mark::Second)))
 }
 
@@ -131,10 +129,4 @@ pub fn broken_mark(input: Text<'_>) -> Parsed<'_, Mark> {
         }
     }
     Ok((rest, Mark::Broken))
-}
-
-/// `h.` must leave the point to the decimals that follow it.
-fn swallows_decimals(input: Text<'_>, rest: Text<'_>) -> bool {
-    let eaten = &input.as_str()[..rest.at() - input.at()];
-    eaten.ends_with('.') && rest.peek().is_some_and(|c| c.is_ascii_digit())
 }

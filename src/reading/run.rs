@@ -1,6 +1,7 @@
 //! Runs of bare numbers parted by single blanks: what they are is settled by what stands around them.
 
 use super::angle::glued;
+use super::marks::double_prime;
 use super::number::{Parsed, is_dash, no, number, part_gap, sign};
 use super::text::Text;
 use crate::report::{Angle, Mark, Number, Part, Sign};
@@ -57,6 +58,10 @@ pub fn run(input: Text<'_>) -> Parsed<'_, Run> {
         return no(input);
     };
     let end = input.skip(last.end - input.at());
+    // -89 02"00': marks exchanged; -89 02 would be a misreading
+    if double_prime(end).is_ok_and(|(r, _)| r.peek().is_some_and(|c| c.is_ascii_digit())) {
+        return no(input);
+    }
     Ok((
         end,
         Run {
