@@ -84,6 +84,9 @@ const PLAIN: &[(&str, &str)] = &[
     ("west-positive", "WestPositive"),
 ];
 
+/// The word table: (folded phrase, exact words or "", final dot may be left out, meaning, language).
+type Table = Vec<(String, String, bool, String, String)>;
+
 fn main() {
     let root = env::var("CARGO_MANIFEST_DIR").expect("cargo sets it");
     let words = Path::new(&root).join("grammar/words");
@@ -92,8 +95,8 @@ fn main() {
     println!("cargo:rerun-if-changed=grammar/build.rs");
     println!("cargo:rerun-if-changed=src/reading/fold.rs");
 
-    // (folded phrase, exact words or "", final dot may be left out, meaning)
-    let mut table: Vec<(String, String, bool, String)> = Vec::new();
+    // (folded phrase, exact words or "", final dot may be left out, meaning, language)
+    let mut table: Table = Vec::new();
     let mut files: Vec<_> = fs::read_dir(&words)
         .expect("grammar/words")
         .map(|e| e.expect("entry").path())
@@ -103,6 +106,9 @@ fn main() {
         let text = fs::read_to_string(&file).expect("readable word file");
         let entries: BTreeMap<String, serde_yaml::Value> =
             serde_yaml::from_str(&text).unwrap_or_else(|e| panic!("{}: {e}", file.display()));
+        let language = file
+            .file_stem()
+            .map_or(String::new(), |s| s.to_string_lossy().into_owned());
         for (key, value) in entries {
             let refuse = |what: &str| -> ! { panic!("{}: key `{key}`: {what}", file.display()) };
             if key == "language" {
@@ -166,7 +172,13 @@ fn main() {
                         _ => (word, false),
                     };
                     let folded: String = word.chars().map(fold::fold).collect();
-                    table.push((folded, exact, dot, format!("Word::{meaning}")));
+                    table.push((
+                        folded,
+                        exact,
+                        dot,
+                        format!("Word::{meaning}"),
+                        language.clone(),
+                    ));
                 }
             }
         }
@@ -185,10 +197,10 @@ fn main() {
     });
     table.dedup();
     let mut code = format!("pub(super) static WORDS: [Entry; {}] = [\n", table.len());
-    for (folded, exact, dot, meaning) in &table {
+    for (folded, exact, dot, meaning, language) in &table {
         writeln!(
             code,
-            "Entry {{ folded: {folded:?}, exact: {exact:?}, dot: {dot}, word: {meaning} }},"
+            "Entry {{ folded: {folded:?}, exact: {exact:?}, dot: {dot}, word: {meaning}, language: {language:?} }},"
         )
         .expect("to a string");
     }
@@ -206,7 +218,7 @@ fn strings(value: &serde_yaml::Value) -> Option<Vec<String>> {
 }
 
 /// The constellations' names (abbreviation, nominative, genitive) become words too.
-fn constellations(root: &str, table: &mut Vec<(String, String, bool, String)>) {
+fn constellations(root: &str, table: &mut Table) {
     let text = fs::read_to_string(Path::new(root).join("grammar/constellations.csv"))
         .expect("grammar/constellations.csv");
     for line in text.lines().skip(1) {
@@ -219,6 +231,7 @@ fn constellations(root: &str, table: &mut Vec<(String, String, bool, String)>) {
                 String::new(),
                 false,
                 format!("Word::ConstellationName({abbreviation:?})"),
+                String::new(),
             ));
         }
     }

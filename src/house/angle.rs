@@ -81,9 +81,28 @@ pub fn read(word: &str, axis: Axis) -> Result<Degrees, AngleError> {
         .split(|c: char| !c.is_ascii_digit() && c != '.')
         .filter(|part| !part.is_empty())
         .collect();
-    let marks_fit = body
-        .chars()
-        .all(|c| c.is_ascii_digit() || c.is_whitespace() || ".:°ºdegDminsec′'’″\"”".contains(c));
+    let is_number = |c: char| c.is_ascii_digit() || c == '.';
+    let marks_fit = body.split(is_number).map(str::trim).all(|mark| {
+        matches!(
+            mark,
+            "" | ":"
+                | "°"
+                | "º"
+                | "d"
+                | "deg"
+                | "m"
+                | "min"
+                | "s"
+                | "sec"
+                | "'"
+                | "′"
+                | "’"
+                | "\""
+                | "″"
+                | "”"
+                | "''"
+        )
+    });
     if !marks_fit || numbers.is_empty() || numbers.len() > 3 {
         return Err(form());
     }

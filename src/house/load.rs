@@ -246,16 +246,20 @@ impl Reading<'_> {
 
 /// A scalar as written; lent by the text wherever the YAML reader can.
 #[derive(Clone, Debug)]
-struct Word<'de>(Cow<'de, str>);
+struct Word<'de> {
+    text: Cow<'de, str>,
+    /// The place of its key, for a word whose own place the YAML reader does not tell (escapes, several lines).
+    near: Option<Span>,
+}
 
 impl Word<'_> {
     fn text(&self) -> &str {
-        &self.0
+        &self.text
     }
 
     fn span(&self, reading: &Reading) -> Option<Span> {
-        let Cow::Borrowed(text) = self.0 else {
-            return None;
+        let Cow::Borrowed(text) = self.text else {
+            return self.near;
         };
         let start = (text.as_ptr() as usize).checked_sub(reading.base)?;
         (start + text.len() <= reading.length).then(|| Span::new(start, start + text.len()))
@@ -286,11 +290,17 @@ impl<'de> Visitor<'de> for WordVisitor {
     }
 
     fn visit_borrowed_str<E: de::Error>(self, text: &'de str) -> Result<Word<'de>, E> {
-        Ok(Word(Cow::Borrowed(text)))
+        Ok(Word {
+            text: Cow::Borrowed(text),
+            near: None,
+        })
     }
 
     fn visit_str<E: de::Error>(self, text: &str) -> Result<Word<'de>, E> {
-        Ok(Word(Cow::Owned(text.to_owned())))
+        Ok(Word {
+            text: Cow::Owned(text.to_owned()),
+            near: None,
+        })
     }
 }
 
@@ -385,8 +395,14 @@ impl<'de, S: Section<'de>> Visitor<'de> for Entries<'_, '_, S> {
     }
 }
 
-fn word<'de, A: MapAccess<'de>>(map: &mut A, reading: &mut Reading) -> Result<Word<'de>, A::Error> {
-    map.next_value_seed(WordSeed(reading))
+fn word<'de, A: MapAccess<'de>>(
+    key: &Word,
+    map: &mut A,
+    reading: &mut Reading,
+) -> Result<Word<'de>, A::Error> {
+    let mut word = map.next_value_seed(WordSeed(reading))?;
+    word.near = key.span(reading);
+    Ok(word)
 }
 
 fn section<'de, A: MapAccess<'de>, S: Section<'de>>(
@@ -484,14 +500,14 @@ impl<'de> Section<'de> for EquinoxSection<'_> {
     ) -> Result<(), A::Error> {
         match key.text() {
             "canonical" => {
-                let value = word(map, reading)?;
+                let value = word(key, map, reading)?;
                 match frame_named(value.text()) {
                     Ok(frame) => self.0.canonical = frame,
                     Err(what) => reading.mistake(&value, what, frame::EXPECTED),
                 }
             }
             "when-missing" => {
-                let value = word(map, reading)?;
+                let value = word(key, map, reading)?;
                 if value.text() == "query" {
                     self.0.when_missing = WhenMissing::Query;
                 } else {
@@ -529,13 +545,13 @@ impl<'de> Section<'de> for HorizonSection<'_> {
     ) -> Result<(), A::Error> {
         match key.text() {
             "lowest" => {
-                let value = word(map, reading)?;
+                let value = word(key, map, reading)?;
                 if let Some(x) = reading.number(&value, "altitude in degrees", -5.0, 90.0) {
                     self.0.lowest_altitude_deg = x;
                 }
             }
             "darkness" => {
-                let value = word(map, reading)?;
+                let value = word(key, map, reading)?;
                 if let Some(x) =
                     reading.number(&value, "altitude of the Sun in degrees", -90.0, 90.0)
                 {
@@ -543,7 +559,7 @@ impl<'de> Section<'de> for HorizonSection<'_> {
                 }
             }
             "daylight-magnitude" => {
-                let value = word(map, reading)?;
+                let value = word(key, map, reading)?;
                 if let Some(x) = reading.number(&value, "magnitude", -30.0, 30.0) {
                     self.0.daylight_magnitude = Some(x);
                 }
@@ -574,7 +590,7 @@ impl<'de> Section<'de> for WeightsSection<'_> {
         map: &mut A,
         reading: &mut Reading,
     ) -> Result<(), A::Error> {
-        let value = word(map, reading)?;
+        let value = word(key, map, reading)?;
         let rule = key.text();
         if !reading.rules.contains(&rule) {
             let expected = match nearest(rule, reading.rules.iter().copied()) {
@@ -684,7 +700,7 @@ impl<'de> Section<'de> for SiteSection {
                 } else {
                     Axis::Longitude
                 };
-                let value = word(map, reading)?;
+                let value = word(key, map, reading)?;
                 match angle::read(value.text(), axis) {
                     Ok(degrees) if axis == Axis::Latitude => self.latitude = Some(degrees),
                     Ok(degrees) => self.longitude = Some(degrees),
@@ -696,7 +712,7 @@ impl<'de> Section<'de> for SiteSection {
                 }
             }
             "elevation" => {
-                let value = word(map, reading)?;
+                let value = word(key, map, reading)?;
                 match elevation_m(value.text()) {
                     Some(metres) => self.site.elevation_m = Some(metres),
                     None => reading.mistake(
@@ -707,7 +723,7 @@ impl<'de> Section<'de> for SiteSection {
                 }
             }
             "zone" => {
-                let value = word(map, reading)?;
+                let value = word(key, map, reading)?;
                 match zone_name(value.text()) {
                     Some(zone) => self.site.zone = Some(zone),
                     None => {
@@ -786,9 +802,9 @@ impl<'de> Section<'de> for ObserverSection<'de> {
         reading: &mut Reading,
     ) -> Result<(), A::Error> {
         match key.text() {
-            "site" => self.site = Some(word(map, reading)?),
+            "site" => self.site = Some(word(key, map, reading)?),
             "letters-to" => {
-                let value = word(map, reading)?;
+                let value = word(key, map, reading)?;
                 let address = value.text();
                 let well_formed = address
                     .split_once('@')

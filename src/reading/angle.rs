@@ -225,7 +225,7 @@ pub fn angle_blanks(input: Text<'_>) -> Parsed<'_, Angle> {
         let Ok((after, value)) = number(here) else {
             break;
         };
-        if value.whole_digits > 2 || glued(after) {
+        if value.whole_digits > 2 || glued_but_compass(after) {
             break;
         }
         if let Some(p) = parts.last_mut() {
@@ -238,7 +238,7 @@ pub fn angle_blanks(input: Text<'_>) -> Parsed<'_, Angle> {
         });
         rest = after;
     }
-    if glued(rest) {
+    if glued_but_compass(rest) {
         return no(input);
     }
     let last = if parts.len() == 3 {
@@ -405,6 +405,15 @@ fn unmarked(input: Text<'_>) -> Parsed<'_, Part> {
 /// A minutes part never carries a double prime.
 fn double_prime_as_none(input: Text<'_>) -> Parsed<'_, Mark> {
     no(input)
+}
+
+/// As [`glued`], but a compass letter may be glued on: `71 22 09E`.
+fn glued_but_compass(rest: Text<'_>) -> bool {
+    let mut next = rest.as_str().chars();
+    let letter = next
+        .next()
+        .is_some_and(|c| matches!(c, 'N' | 'S' | 'E' | 'W' | 'O'));
+    glued(rest) && !(letter && !next.next().is_some_and(char::is_alphanumeric))
 }
 
 /// A letter, digit or underscore directly after: the number is part of something else.

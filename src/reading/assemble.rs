@@ -8,7 +8,9 @@ use super::statements::{Statements, gather};
 use super::table;
 use super::text::Text;
 use super::words::Word;
-use crate::report::{DateWritten, InstantWritten, Nearness, Report, Role, SiteWritten, Zone};
+use crate::report::{
+    Compass, DateWritten, InstantWritten, Nearness, Report, Role, SiteWritten, Zone,
+};
 use crate::sheet::{Block, Sheet};
 use crate::span::{Span, Spanned};
 
@@ -597,6 +599,7 @@ impl<'t> Reader<'t> {
                     None
                 }
             });
+        let site = site.map(|(s, n)| (self.settled_east(s), n));
         let observer = said
             .observers
             .first()
@@ -634,6 +637,22 @@ impl<'t> Reader<'t> {
             stets: said.stets,
             block: if part.is_empty() { block } else { part },
         });
+    }
+
+    /// "O" is east in German and Dutch, west in the Romance languages: the sheet's own language settles it, or nothing does.
+    fn settled_east(&self, mut site: SiteWritten) -> SiteWritten {
+        if let Some(longitude) = &mut site.longitude
+            && let Some(letter) = longitude.compass
+            && letter.span.of(self.text).trim_end_matches('.') == "O"
+        {
+            let point = match super::words::language(self.text) {
+                Some("de" | "nl") => Some(Compass::East),
+                Some("fr" | "es" | "it" | "pt") => Some(Compass::West),
+                _ => None,
+            };
+            longitude.compass = point.map(|p| Spanned::new(p, letter.span));
+        }
+        site
     }
 
     /// The instants of a report, the governing one first; dates and clock times written apart are put together.

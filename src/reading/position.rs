@@ -474,7 +474,10 @@ impl<'t> Finder<'_, 't> {
                 && padded(&dec)
                 && in_range(&ra, &dec);
         let named = self.word_before(i)
-            || self.named_line(i) && padded(&ra) && (dec.sign.is_some() || dec.compass.is_some());
+            || self.named_line(i)
+                && ra.parts().len() > 1
+                && padded(&ra)
+                && (dec.sign.is_some() || dec.compass.is_some());
         let pairs_well =
             ra.parts().len() > 1 && dec.parts().len() > 1 || dec.sign.is_some() || dec_marked;
         if strong
@@ -745,7 +748,6 @@ impl<'t> Finder<'_, 't> {
 
     /// A second form of the declination after the first: `= -03:15:03`, `(-3d 15')`.
     fn second_form(&self, from: usize) -> Option<(Angle, usize)> {
-        let mut g = Gathered::default();
         let mut i = from;
         while let Some(atom) = self.atoms.get(i) {
             match &atom.kind {
@@ -838,6 +840,16 @@ impl<'t> Finder<'_, 't> {
                     return !p
                         .meanings()
                         .any(|w| matches!(w, Word::Weekday(_) | Word::Month(_)));
+                }
+                // coordinates of a site
+                Kind::Word(p)
+                    if p.means(Word::Site)
+                        && self
+                            .atoms
+                            .get(k + 1)
+                            .is_some_and(|a| a.is_mark(':') || a.is_mark('=')) =>
+                {
+                    return true;
                 }
                 Kind::Word(_) | Kind::Plain => {
                     words += 1;

@@ -139,7 +139,7 @@ fn atom<'a>(rest: Text<'a>, c: char, after_label: bool, awaiting: bool) -> (Text
         }
     }
     if !word_start && !after_label {
-        if c.is_alphanumeric() || c == '_' {
+        if c.is_alphanumeric() {
             return plain(rest);
         }
         // a dash glued to a word is a hyphen, not a sign; one between digits parts a compact pair

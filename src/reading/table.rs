@@ -305,6 +305,9 @@ impl Head {
                             Word::Position => set(Column::Both, 4),
                             Word::HourAngle => set(Column::HourAngle, 8),
                             Word::Azimuth => set(Column::Azimuth, 8),
+                            Word::Elevation if atom.span.len() == 1 => {
+                                unit = Some(AngleUnit::Hours)
+                            }
                             Word::Elevation => set(Column::Elevation, 7),
                             Word::Altitude => set(Column::Altitude, 6),
                             Word::Object => set(Column::Object, 5),
@@ -342,7 +345,11 @@ impl Head {
                             Word::Uncertainty => set(Column::Uncertainty, 10),
                             Word::Degrees => unit = Some(AngleUnit::Degrees),
                             Word::Hours => unit = Some(AngleUnit::Hours),
-                            Word::Feet => self.feet = true,
+                            Word::Feet => {
+                                self.feet = true;
+                                set(Column::Elevation, 7);
+                            }
+                            Word::Metres => set(Column::Elevation, 7),
                             _ => {}
                         }
                     }

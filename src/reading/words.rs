@@ -92,6 +92,7 @@ pub(super) struct Entry {
     exact: &'static str,
     dot: bool,
     word: Word,
+    language: &'static str,
 }
 
 mod table {
@@ -191,6 +192,45 @@ pub fn word<'a, T>(input: Text<'a>, wanted: impl Fn(Word) -> Option<T>) -> Optio
 /// The longest phrase at the beginning of `input` that can mean `word`: what is left after it.
 pub fn says(input: Text<'_>, wanted: Word) -> Option<Text<'_>> {
     word(input, |w| (w == wanted).then_some(())).map(|(rest, ())| rest)
+}
+
+/// The language most of a text's words are of (`en`, `de`, …), where one leads clearly.
+pub fn language(text: &str) -> Option<&'static str> {
+    let mut votes: Vec<(&'static str, usize)> = Vec::new();
+    let mut at = 0;
+    for piece in text.split_inclusive(|c: char| !c.is_alphanumeric()) {
+        let here = Text::window(text, crate::span::Span::new(at, text.len()));
+        at += piece.len();
+        // words that only one language has
+        let mut of: Option<&'static str> = None;
+        let mut only = true;
+        for (_, p) in phrases(here) {
+            let entry = &table::WORDS[p.first];
+            if entry.folded.chars().count() < 3
+                || entry.language == "common"
+                || entry.language.is_empty()
+            {
+                continue;
+            }
+            match of {
+                None => of = Some(entry.language),
+                Some(l) if l != entry.language => only = false,
+                _ => {}
+            }
+        }
+        if let (Some(l), true) = (of, only) {
+            match votes.iter_mut().find(|(v, _)| *v == l) {
+                Some((_, n)) => *n += 1,
+                None => votes.push((l, 1)),
+            }
+        }
+    }
+    votes.sort_by_key(|(_, n)| std::cmp::Reverse(*n));
+    match votes[..] {
+        [(l, _)] => Some(l),
+        [(l, a), (_, b), ..] if a > b => Some(l),
+        _ => None,
+    }
 }
 
 fn bucket(first: char, second: Option<char>) -> std::ops::Range<usize> {

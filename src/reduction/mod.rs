@@ -16,13 +16,18 @@ pub use print::printed;
 pub use target::parse_target;
 
 use crate::house::{House, WhenMissing};
-use crate::report::{Frame, Meant, ReadPosition, Report};
+use crate::report::{EquinoxTag, Frame, Meant, ReadPosition, Report};
 use crate::sky::moment::{Moment, Station};
 use crate::sky::{Direction, constellations};
 use std::cell::OnceCell;
 
 /// What a report means under the house rules, restated in the frame `to`. Never fails: what cannot be had is `None`.
 pub fn mean(report: &Report, house: &House, to: Frame) -> Meant {
+    mean_by(report, house, to, Moment::new)
+}
+
+/// The same with another way to an instant: [`Moment::shared`] for a run of many reports.
+pub fn mean_by(report: &Report, house: &House, to: Frame, clock: Clock) -> Meant {
     let mut meant = Meant::default();
     (meant.site, meant.site_trouble, meant.site_register_deg) = site::resolve(report, house);
     (meant.instant, meant.instant_trouble) = instant::resolve(report, house, meant.site.as_ref());
@@ -30,11 +35,13 @@ pub fn mean(report: &Report, house: &House, to: Frame) -> Meant {
         return meant;
     };
     let mut understood = frame::understand(report.position.kind, &report.equinoxes);
-    if understood.frame.is_none() {
-        if let WhenMissing::Assume(frame) = house.when_missing {
-            understood.frame = Some(frame);
-            meant.assumed.push(format!("equinox {}", frame.equinox));
-        }
+    // a house rule fills in what nobody wrote, not what was written and contradicts itself
+    let year_written = |t: &EquinoxTag| !t.misspelt && t.year.is_some();
+    let unsaid = !report.equinoxes.iter().any(|t| year_written(&t.0.value));
+    if let (None, true, WhenMissing::Assume(frame)) = (understood.frame, unsaid, house.when_missing)
+    {
+        understood.frame = Some(frame);
+        meant.assumed.push(format!("equinox {}", frame.equinox));
     }
     let read = ReadPosition {
         frame: understood.frame,
@@ -42,7 +49,7 @@ pub fn mean(report: &Report, house: &House, to: Frame) -> Meant {
     };
     meant.read = Some(read);
 
-    let sky = Sky::new(&meant);
+    let sky = Sky::new(&meant, clock);
     let written = to::Written {
         read,
         from_origin: understood.from_origin,
@@ -58,6 +65,9 @@ pub fn mean(report: &Report, house: &House, to: Frame) -> Meant {
     meant
 }
 
+/// A way from UTC to what the sky needs of an instant.
+pub type Clock = fn((f64, f64)) -> Moment;
+
 /// The instant and the site of a report as the sky needs them, each computed when first asked for, and once.
 pub struct Sky {
     /// UTC of the observation, however doubtful its hour.
@@ -65,13 +75,14 @@ pub struct Sky {
     /// Nothing is doubtful about the instant and the site.
     sure: bool,
     ground: Option<crate::sky::Ground>,
+    clock: Clock,
     moment: OnceCell<Moment>,
     station: OnceCell<Station>,
 }
 
 impl Sky {
     /// Of a report whose instant and site are resolved.
-    pub fn new(meant: &Meant) -> Sky {
+    pub fn new(meant: &Meant, clock: Clock) -> Sky {
         Sky {
             utc: meant
                 .instant
@@ -83,6 +94,7 @@ impl Sky {
                 longitude_deg: s.longitude_deg,
                 elevation_m: s.elevation_m.unwrap_or(0.0),
             }),
+            clock,
             moment: OnceCell::new(),
             station: OnceCell::new(),
         }
@@ -96,7 +108,7 @@ impl Sky {
     /// The instant, if there is one.
     pub fn moment(&self) -> Option<&Moment> {
         let utc = self.utc?;
-        Some(self.moment.get_or_init(|| Moment::new(utc)))
+        Some(self.moment.get_or_init(|| (self.clock)(utc)))
     }
 
     /// The instant at the site, if there are both and nothing is doubtful about them.

@@ -17,7 +17,7 @@
 //! ```report
 //! Object: Suspect 138
 //! RA 12 27 48 Dec -60 24 04 (J2000.0)
-//! Date: 2017-02-16 21:06 UT
+//! Date: 2017-02-16 19:49 UT
 //! #                ^^^^^ 2° above the horizon
 //! Site: 20.00 N 60.00 E, 15 m
 //! ```
@@ -38,6 +38,7 @@ pub(super) const RULE: Rule = Rule {
     gives_way_to: &[
         "below-horizon",
         "never-rises",
+        "near-sun",
         "ra-unit-unclear",
         "zone-missing",
         "zone-doubtful",

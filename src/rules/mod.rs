@@ -52,9 +52,11 @@ pub use common::examine::{Selection, examine};
 pub use common::sisters::{Run, together};
 
 pub(crate) use common::examine::of_place_and_time;
-pub(crate) use common::identity;
 pub(crate) use common::sisters::Sisters;
 pub(crate) use common::words;
+pub(crate) use common::{angles, identity};
+pub(crate) use date_order_unclear::exchanged as day_and_month_exchanged;
+pub(crate) use equinox_missing::usual as usual_equinoxes;
 
 use crate::house::House;
 use crate::report::{Finding, Meant, Report, Weight};

@@ -15,7 +15,7 @@
 //! ## Example
 //! ```report
 //! Object: Suspect 159
-//! RA 05 02 00 Dec +18 00 00 (J2000.0)
+//! RA 04 38 00 Dec +17 20 00 (J2000.0)
 //! #  ^^^^^^^^^^^^^^^^^^^^^^ beside the Moon
 //! Date: 2018-02-23 18:00 UT
 //! Site: 30.00 N 10.00 E, 50 m

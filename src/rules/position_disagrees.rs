@@ -10,10 +10,10 @@
 //!
 //! ## Formula
 //! Both forms are brought to the ICRS; |Δα cos δ| and |Δδ| are held to the sums of the steps. Galactic: the IAU 1958
-//! system as in the Hipparcos Catalogue. Ecliptic: mean obliquity of J2000.0, IAU 2006, or of the date.
+//! system as in the Hipparcos Catalogue. Ecliptic: mean ecliptic and equinox of J2000.0, of B1950.0 or of date, IAU 2006.
 //!
 //! ## Source
-//! ESA SP-1200 (1997), vol. 1, 1.5.3 for the galactic pole; Capitaine et al. 2003, A&A 412, 567 for the obliquity.
+//! ESA SP-1200 (1997), vol. 1, 1.5.3 for the galactic pole; Capitaine et al. 2003, A&A 412, 567 for the ecliptic.
 //!
 //! ## Example
 //! ```report
@@ -32,7 +32,7 @@ use super::common::identity::here;
 use super::common::words::{self, apart};
 use super::{Case, Findings, Rule};
 use crate::report::{Angle, AngleUnit, Position, PositionKind, Report, StatedOther, Weight};
-use crate::sky::{Direction, separation_deg};
+use crate::sky::{Direction, ecliptic, galactic, separation_deg};
 use crate::slips::digits;
 
 pub(super) const RULE: Rule = Rule {
@@ -154,24 +154,20 @@ fn other_system(case: &Case, stated: &StatedOther, out: &mut Findings) {
         dec_deg: latitude,
     };
     let (name, places) = if stated.galactic {
-        ("galactic", vec![galactic(icrs)])
+        ("galactic", vec![galactic::from_icrs(icrs)])
     } else {
         // of J2000.0, of B1950.0 or of date: which is seldom said, so the nearest counts
-        let now = case
-            .meant
-            .instant
-            .map_or(0.0, |i| ((i.utc.0 - 2_451_545.0) + i.utc.1) / 36_525.0);
-        (
-            "ecliptic",
-            [0.0, -0.5, now].map(|t| ecliptic(icrs, t)).to_vec(),
-        )
+        let date = case.meant.instant.map_or((2_451_545.0, 0.0), |i| i.utc);
+        let equinoxes = [(2_451_545.0, 0.0), (2_433_282.5, 0.0), date];
+        let places = equinoxes.map(|equinox| ecliptic::from_icrs(icrs, equinox));
+        ("ecliptic", places.to_vec())
     };
     let own = (stated.longitude.step() * latitude.to_radians().cos().abs())
         .max(stated.latitude.step())
         * 3600.0;
     let Some(distance) = places
         .iter()
-        .map(|place| separation_deg(*place, said) * 3600.0)
+        .map(|(l, b)| separation_deg(Direction::new(*l, *b), said) * 3600.0)
         .min_by(f64::total_cmp)
     else {
         return;
@@ -189,35 +185,5 @@ fn other_system(case: &Case, stated: &StatedOther, out: &mut Findings) {
         )
         .related
         .push((stated.span, "the other form".to_string()));
-    }
-}
-
-/// Galactic longitude and latitude of an ICRS direction (ESA SP-1200, vol. 1, 1.5.3: pole 192.85948°, 27.12825°, node 32.93192°).
-fn galactic(icrs: Direction) -> Direction {
-    let (pole_ra, pole_dec, node) = (192.859_48_f64, 27.128_25_f64.to_radians(), 32.931_92);
-    let (d, a) = (
-        icrs.dec_deg.to_radians(),
-        (icrs.ra_deg - pole_ra).to_radians(),
-    );
-    let sin_b = d.sin() * pole_dec.sin() + d.cos() * pole_dec.cos() * a.cos();
-    let y = d.sin() * pole_dec.cos() - d.cos() * pole_dec.sin() * a.cos();
-    let x = d.cos() * a.sin();
-    Direction {
-        ra_deg: (node + y.atan2(x).to_degrees()).rem_euclid(360.0),
-        dec_deg: sin_b.clamp(-1.0, 1.0).asin().to_degrees(),
-    }
-}
-
-/// Ecliptic longitude and latitude, mean ecliptic, with the equinox `t` Julian centuries from J2000.0: obliquity 84381.406″ −
-/// 46.836769″ t, general precession 5028.796195″ t (Capitaine et al. 2003); good to a few arcseconds within two centuries.
-fn ecliptic(icrs: Direction, t: f64) -> Direction {
-    let epsilon = (84_381.406_f64 / 3600.0).to_radians();
-    let (d, a) = (icrs.dec_deg.to_radians(), icrs.ra_deg.to_radians());
-    let y = a.sin() * d.cos() * epsilon.cos() + d.sin() * epsilon.sin();
-    let z = d.sin() * epsilon.cos() - a.sin() * d.cos() * epsilon.sin();
-    let x = a.cos() * d.cos();
-    Direction {
-        ra_deg: (y.atan2(x).to_degrees() + 5028.796_195 * t / 3600.0).rem_euclid(360.0),
-        dec_deg: z.clamp(-1.0, 1.0).asin().to_degrees(),
     }
 }

@@ -31,7 +31,7 @@ use crate::sky::{Direction, separation_deg};
 pub(super) const RULE: Rule = Rule {
     name: "site-disagrees",
     weight: Weight::Query,
-    of_place_or_time: false,
+    of_place_or_time: true,
     gives_way_to: &["site-out-of-range"],
     source: include_str!("site_disagrees.rs"),
     check,

@@ -4,7 +4,7 @@
 //! [`Body::theory_arcsec`]: the worst seen at 200 instants from 1900 to 2050 against JPL DE421.
 
 use super::moment::{Moment, Station};
-use super::{Direction, Ground, separation_deg, time};
+use super::{Direction, Ground, separation_deg};
 use sofars::eph::{moon98, plan94};
 
 /// A body of the solar system.
@@ -47,7 +47,7 @@ impl Body {
             Body::Jupiter => 81.0,
             Body::Saturn => 97.0,
             Body::Uranus => 91.0,
-            Body::Neptune => 10.0,
+            Body::Neptune => 10.2,
         }
     }
 
@@ -153,15 +153,17 @@ pub fn moon_phase(moment: &Moment) -> (f64, bool) {
 fn astrometric(body: Body, moment: &Moment, observer: [f64; 3]) -> [f64; 3] {
     let earth = moment.earth.barycentric;
     let eye: [f64; 3] = std::array::from_fn(|i| earth[0][i] + observer[i]);
-    let mut days = 0.0;
+    // the Moon's light is 1.28 s on its way, give or take 0.08: 0.04″ of its motion
+    let (mut days, rounds) = match body {
+        Body::Moon => (0.002_57 * LIGHT_DAYS_PER_AU, 1),
+        Body::Sun => (0.0, 1), // it moves 0.0001″ in the eight minutes
+        _ => (0.0, 3),
+    };
     let mut vector = [0.0; 3];
-    for _ in 0..3 {
+    for _ in 0..rounds {
         let then = barycentric(body, moment, days);
         vector = std::array::from_fn(|i| then[i] - eye[i]);
         days = norm(vector) * LIGHT_DAYS_PER_AU;
-        if body == Body::Sun {
-            break; // it moves 0.0001″ in the eight minutes
-        }
     }
     vector
 }
@@ -202,9 +204,4 @@ fn motion(body: Body, moment: &Moment) -> f64 {
 
 fn norm(v: [f64; 3]) -> f64 {
     (v[0] * v[0] + v[1] * v[1] + v[2] * v[2]).sqrt()
-}
-
-/// The Julian epoch (TT) of a moment, for proper motions.
-pub fn julian_epoch(moment: &Moment) -> f64 {
-    time::julian_epoch(moment.tt)
 }

@@ -5,7 +5,7 @@
 
 use super::icrs::{Motion, moved};
 use super::{Direction, constellations, fk5, separation_deg, time};
-use std::collections::HashMap;
+use std::collections::{HashMap, HashSet};
 use std::fmt::Write;
 use std::sync::LazyLock;
 
@@ -44,15 +44,20 @@ impl Entry {
 }
 
 /// An object by any designation people use: IAU name, Bayer (Greek letter, Latin name, abbreviation), Flamsteed, HR, HD,
-/// SAO, HIP, Messier.
+/// SAO, HIP, Messier. A name that is none of these is told without opening the table of stars.
 pub fn find(name: &str) -> Option<Entry> {
     let words = words(name);
+    let designation = designation(&words);
     let joined = words.concat();
-    let index = CATALOGUE
-        .by_name
-        .get(joined.as_str())
-        .or_else(|| CATALOGUE.by_name.get(designation(&words)?.as_str()))?;
-    CATALOGUE.entries.get(*index as usize).copied()
+    if designation.is_none() && !NAMES.contains(joined.as_str()) {
+        return None;
+    }
+    let all = &*CATALOGUE;
+    let index = match all.by_name.get(joined.as_str()) {
+        Some(&index) => index as usize,
+        None => all.position(designation?)?,
+    };
+    all.entries.get(index).copied()
 }
 
 /// Objects within a radius of a direction (at J2000.0), nearest first, each with its distance in degrees.
@@ -94,11 +99,11 @@ const GREEK: [(char, &str, &[&str]); 24] = [
     ('ι', "iota", &["iot"]),
     ('κ', "kappa", &["kap"]),
     ('λ', "lambda", &["lam"]),
-    ('μ', "mu", &["mu."]),
-    ('ν', "nu", &["nu."]),
-    ('ξ', "xi", &["ksi", "xi."]),
+    ('μ', "mu", &[]),
+    ('ν', "nu", &[]),
+    ('ξ', "xi", &["ksi"]),
     ('ο', "omicron", &["omi"]),
-    ('π', "pi", &["pi."]),
+    ('π', "pi", &[]),
     ('ρ', "rho", &[]),
     ('σ', "sigma", &["sig"]),
     ('τ', "tau", &[]),
@@ -175,53 +180,92 @@ fn plain(c: char) -> char {
     }
 }
 
-/// The key of a designation made of words: `hr2491`, `m42`, `alpha.ori`, `alpha2.cen`, `61.cyg`.
-fn designation(words: &[String]) -> Option<String> {
+/// A designation by number or letter.
+#[derive(Clone, Copy, PartialEq, Eq, Debug)]
+enum Designation {
+    Number(Kind, u32),
+    Flamsteed(u32, u8),
+    /// The letter's place in the alphabet, its index (0 for none) and the constellation's place in its table.
+    Bayer(u8, u32, u8),
+}
+
+/// Which list a number is of; the first four are columns of the table of stars.
+#[derive(Clone, Copy, PartialEq, Eq, Debug)]
+enum Kind {
+    Hr,
+    Hd,
+    Sao,
+    Hip,
+    Messier,
+}
+
+/// The designation that words make, if they make one.
+fn designation(words: &[String]) -> Option<Designation> {
     let number = |w: &String| w.parse::<u32>().ok();
     match words {
         [prefix, n] if number(n).is_some() => {
-            let prefix = match prefix.as_str() {
-                "bs" | "hr" => "hr",
-                "hip" | "hd" | "sao" | "ngc" | "ic" => prefix.as_str(),
-                "m" | "messier" => "m",
+            let kind = match prefix.as_str() {
+                "bs" | "hr" => Kind::Hr,
+                "hd" => Kind::Hd,
+                "sao" => Kind::Sao,
+                "hip" => Kind::Hip,
+                "m" | "messier" => Kind::Messier,
                 _ => return None,
             };
-            Some(format!("{prefix}{}", number(n)?))
+            Some(Designation::Number(kind, number(n)?))
         }
-        [n, rest @ ..] if number(n).is_some() => {
-            Some(format!("{}.{}", number(n)?, constellation(&rest.concat())?))
-        }
-        [letter, n, rest @ ..] if number(n).is_some() => Some(format!(
-            "{}{}.{}",
-            bayer(letter)?,
+        [n, rest @ ..] if number(n).is_some() => Some(Designation::Flamsteed(
             number(n)?,
-            constellation(&rest.concat())?
+            constellation(&rest.concat())?,
         )),
-        [letter, rest @ ..] if !rest.is_empty() => Some(format!(
-            "{}.{}",
+        [letter, n, rest @ ..] if number(n).is_some() => {
+            let place = constellation(&rest.concat())?;
+            Some(Designation::Bayer(bayer(letter)?, number(n)?, place))
+        }
+        [letter, rest @ ..] if !rest.is_empty() => Some(Designation::Bayer(
             bayer(letter)?,
-            constellation(&rest.concat())?
+            0,
+            constellation(&rest.concat())?,
         )),
         _ => None,
     }
 }
 
-fn bayer(word: &str) -> Option<&'static str> {
-    GREEK
+/// The place of a Greek letter in the alphabet, by name or abbreviation.
+fn bayer(word: &str) -> Option<u8> {
+    let found = GREEK
         .iter()
-        .find(|g| g.1 == word || g.2.contains(&word))
-        .map(|g| g.1)
+        .position(|g| g.1 == word || g.2.contains(&word))?;
+    u8::try_from(found).ok()
 }
 
-/// The abbreviation, lower case, of a constellation by abbreviation, nominative or genitive (blanks taken out).
-fn constellation(word: &str) -> Option<String> {
-    CONSTELLATIONS.get(word).map(|abbr| abbr.to_string())
+/// The place of a constellation in its table, by abbreviation, nominative or genitive (lower case, blanks taken out).
+fn constellation(word: &str) -> Option<u8> {
+    CONSTELLATIONS.get(word).copied()
 }
 
-static CONSTELLATIONS: LazyLock<HashMap<String, String>> = LazyLock::new(|| {
+static CONSTELLATIONS: LazyLock<HashMap<String, u8>> = LazyLock::new(|| {
     constellations::NAMES
         .iter()
-        .flat_map(|names| names.map(|n| (words(n).concat(), names[0].to_lowercase())))
+        .zip(0u8..)
+        .flat_map(|(names, i)| names.map(|n| (words(n).concat(), i)))
+        .collect()
+});
+
+/// Names that are no designations: IAU names of stars, Messier's objects' other names.
+static NAMES: LazyLock<HashSet<String>> = LazyLock::new(|| {
+    let cells = |table: &'static str, columns: &'static [usize]| {
+        table.lines().skip(1).flat_map(move |line| {
+            let part: Vec<&str> = line.split(',').collect();
+            columns
+                .iter()
+                .map(move |&i| words(part.get(i).unwrap_or(&"")).concat())
+                .collect::<Vec<_>>()
+        })
+    };
+    cells(include_str!("data/iau_star_names.csv"), &[0, 1, 2])
+        .chain(cells(include_str!("data/messier.csv"), &[0, 1, 2]))
+        .filter(|name| !name.is_empty())
         .collect()
 });
 
@@ -230,7 +274,44 @@ static CONSTELLATIONS: LazyLock<HashMap<String, String>> = LazyLock::new(|| {
 struct Catalogue {
     entries: Vec<Entry>,
     by_dec: Vec<Entry>,
+    /// HR, HD, SAO and HIP numbers of the entries that have them; 0 for none.
+    numbers: [Vec<u32>; 4],
+    /// Flamsteed number, Bayer letter + 1, index and constellation of the entries that have them.
+    letters: Vec<[u8; 4]>,
+    /// Entry of M1.
+    messier: usize,
     by_name: HashMap<String, u32>,
+}
+
+impl Catalogue {
+    fn position(&self, designation: Designation) -> Option<usize> {
+        match designation {
+            Designation::Number(Kind::Messier, n @ 1..=110) => Some(self.messier + n as usize - 1),
+            Designation::Number(Kind::Messier, _) | Designation::Number(_, 0) => None,
+            Designation::Number(kind, n) => {
+                self.numbers[kind as usize].iter().position(|&x| x == n)
+            }
+            Designation::Flamsteed(n, place) => {
+                let n = u8::try_from(n).ok().filter(|&n| n > 0)?;
+                self.letters.iter().position(|l| l[0] == n && l[3] == place)
+            }
+            Designation::Bayer(letter, index, place) => {
+                let index = u8::try_from(index).ok()?;
+                let fits = |l: &[u8; 4]| {
+                    l[1] == letter + 1 && l[3] == place && (index == 0 || l[2] == index)
+                };
+                let magnitude = |i: usize| self.entries[i].v_mag.unwrap_or(99.0);
+                let all = self
+                    .letters
+                    .iter()
+                    .enumerate()
+                    .filter(|l| fits(l.1))
+                    .map(|l| l.0);
+                // of several with one letter the brightest is meant
+                all.min_by(|&a, &b| magnitude(a).total_cmp(&magnitude(b)))
+            }
+        }
+    }
 }
 
 static CATALOGUE: LazyLock<Catalogue> = LazyLock::new(|| {
@@ -247,9 +328,10 @@ struct Making {
     /// The names, one after another, and where each ends; leaked once at the end.
     names: String,
     ends: Vec<usize>,
+    numbers: [Vec<u32>; 4],
+    letters: Vec<[u8; 4]>,
+    messier: usize,
     by_name: HashMap<String, u32>,
-    /// Magnitudes of the stars that hold a Bayer designation without its index.
-    brightest: HashMap<String, f64>,
 }
 
 /// Stars that are not in the Bright Star Catalogue and move by more than 1″ a year: name, proper motion (RA × cos δ, Dec,
@@ -267,14 +349,25 @@ impl Making {
         (self.entries.len() - 1) as u32
     }
 
+    fn number(&mut self, numbers: [&str; 4]) {
+        for (column, text) in self.numbers.iter_mut().zip(numbers) {
+            column.push(text.parse().unwrap_or(0));
+        }
+    }
+
     fn key(&mut self, key: String, index: u32) {
-        self.by_name.entry(key).or_insert(index);
+        if !key.is_empty() {
+            self.by_name.entry(key).or_insert(index);
+        }
     }
 
     fn stars(&mut self) {
         let j2000 = (time::J2000, 0.0);
         for line in include_str!("data/bright_stars_bsc5.csv").lines().skip(1) {
-            let part: Vec<&str> = line.split(',').collect();
+            let mut part = [""; 20];
+            for (place, text) in part.iter_mut().zip(line.split(',')) {
+                *place = text;
+            }
             let [
                 hr,
                 hd,
@@ -287,11 +380,8 @@ impl Making {
                 place,
                 iau,
                 ..,
-            ] = part[..]
-            else {
-                continue;
-            };
-            let number = |i: usize| part.get(i).and_then(|p| p.parse::<f64>().ok());
+            ] = part;
+            let number = |i: usize| part[i].parse::<f64>().ok();
             let (Some(ra), Some(dec)) = (number(12), number(13)) else {
                 continue;
             };
@@ -305,57 +395,33 @@ impl Making {
                 // 99 % within 3.8″ of Hipparcos-2; 61 Cygni A is 15″ off in the catalogue itself
                 error_arcsec: if hr == "8085" { 16.0 } else { 4.0 },
             };
-            let letter = bayer(&letter.to_lowercase());
-            let sign = letter
-                .and_then(|l| GREEK.iter().find(|g| g.1 == l))
-                .map(|g| g.0);
-            let index = match (iau, sign, flamsteed) {
-                (iau, _, _) if !iau.is_empty() => self.push(format_args!("{iau}"), entry),
-                (_, Some(sign), _) => self.push(
-                    format_args!("{sign}{} {place}", raised(letter_index)),
-                    entry,
-                ),
-                (_, None, number) if !number.is_empty() => {
+            let greek = GREEK.iter().position(|g| {
+                !letter.is_empty()
+                    && g.1.len() >= letter.len()
+                    && g.1[..letter.len()].eq_ignore_ascii_case(letter)
+            });
+            let index = match (greek, flamsteed) {
+                _ if !iau.is_empty() => self.push(format_args!("{iau}"), entry),
+                (Some(greek), _) => {
+                    let (sign, raised) = (GREEK[greek].0, raised(letter_index));
+                    self.push(format_args!("{sign}{raised} {place}"), entry)
+                }
+                (None, number) if !number.is_empty() => {
                     self.push(format_args!("{number} {place}"), entry)
                 }
                 _ => self.push(format_args!("HR {hr}"), entry),
             };
-            for (prefix, number) in [("hr", hr), ("hd", hd), ("sao", sao), ("hip", hip)] {
-                if !number.is_empty() {
-                    self.key(format!("{prefix}{number}"), index);
-                }
-            }
+            self.number([hr, hd, sao, hip]);
+            let constellation = constellations::NAMES.iter().position(|n| n[0] == place);
+            self.letters.push([
+                flamsteed.parse().unwrap_or(0),
+                greek.map_or(0, |g| g as u8 + 1),
+                letter_index.parse().unwrap_or(0),
+                constellation.map_or(u8::MAX, |c| c as u8),
+            ]);
             if !iau.is_empty() {
                 self.key(words(iau).concat(), index);
             }
-            let place = place.to_lowercase();
-            if !flamsteed.is_empty() {
-                self.key(format!("{flamsteed}.{place}"), index);
-            }
-            if let Some(letter) = letter {
-                self.bayer(letter, letter_index, &place, entry.v_mag, index);
-            }
-        }
-    }
-
-    /// `alpha1.cen` and, for the brightest of them, `alpha.cen`.
-    fn bayer(
-        &mut self,
-        letter: &str,
-        letter_index: &str,
-        place: &str,
-        v_mag: Option<f64>,
-        index: u32,
-    ) {
-        if !letter_index.is_empty() {
-            self.key(format!("{letter}{letter_index}.{place}"), index);
-        }
-        let key = format!("{letter}.{place}");
-        let magnitude = v_mag.unwrap_or(99.0);
-        let held = self.brightest.get(&key).copied().unwrap_or(f64::INFINITY);
-        if magnitude < held {
-            self.brightest.insert(key.clone(), magnitude);
-            self.by_name.insert(key, index);
         }
     }
 
@@ -382,14 +448,14 @@ impl Making {
             else {
                 continue;
             };
-            let held = [
-                ("hip", hip),
-                ("hd", hd),
-                ("hr", designation.strip_prefix("HR ").unwrap_or("")),
-            ]
-            .into_iter()
-            .filter(|d| !d.1.is_empty())
-            .find_map(|(prefix, number)| self.by_name.get(&format!("{prefix}{number}")).copied());
+            let hr = designation.strip_prefix("HR ").unwrap_or("");
+            let held = [(3, hip), (1, hd), (0, hr)]
+                .into_iter()
+                .find_map(|(column, text)| {
+                    let number: u32 = text.parse().ok()?;
+                    let found = self.numbers[column].iter().position(|&n| n == number)?;
+                    u32::try_from(found).ok()
+                });
             let index = match held {
                 Some(index) => index,
                 None => {
@@ -417,11 +483,7 @@ impl Making {
                         error_arcsec: if fast.is_some() { 4.0 } else { 15.0 },
                     };
                     let index = self.push(format_args!("{accented}"), entry);
-                    for (prefix, number) in [("hip", hip), ("hd", hd)] {
-                        if !number.is_empty() {
-                            self.key(format!("{prefix}{number}"), index);
-                        }
-                    }
+                    self.number([hr, hd, "", hip]);
                     self.key(words(designation).concat(), index);
                     index
                 }
@@ -432,6 +494,7 @@ impl Making {
     }
 
     fn messier(&mut self) {
+        self.messier = self.entries.len();
         for line in include_str!("data/messier.csv").lines().skip(1) {
             let part: Vec<&str> = line.split(',').collect();
             let [name, other, common, _, magnitude, size, ra, dec, ..] = part[..] else {
@@ -477,6 +540,9 @@ impl Making {
         Catalogue {
             entries: self.entries,
             by_dec,
+            numbers: self.numbers,
+            letters: self.letters,
+            messier: self.messier,
             by_name: self.by_name,
         }
     }

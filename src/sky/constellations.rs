@@ -176,21 +176,3 @@ fn to_cell(place: Direction, band: &Band, from_s: i32, to_s: i32) -> f64 {
         })
         .fold(180.0, f64::min)
 }
-
-/// Every corner of the table in B1875.0, (seconds of time, arcsec): for tests.
-pub fn corners() -> Vec<(i32, i32)> {
-    ROWS.iter()
-        .flat_map(|r| [(r.from_s, r.above_arcsec), (r.to_s, r.above_arcsec)])
-        .collect()
-}
-
-/// What the table's own search finds, row by row from the first: for tests of the cells.
-pub fn by_rows(ra_s: f64, dec_arcsec: f64) -> Option<&'static str> {
-    ROWS.iter()
-        .find(|r| {
-            f64::from(r.above_arcsec) <= dec_arcsec
-                && f64::from(r.from_s) <= ra_s
-                && ra_s < f64::from(r.to_s)
-        })
-        .map(|r| r.abbreviation)
-}

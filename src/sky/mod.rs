@@ -16,6 +16,7 @@ pub mod fk4;
 pub mod fk4_fk5;
 pub mod fk5;
 pub mod galactic;
+pub mod grid;
 pub mod horizon;
 pub mod horizontal;
 pub mod hour_angle;

@@ -1,9 +1,11 @@
 //! What every position at one instant (and one site) shares, computed once.
 
+use super::grid::{self, Slow};
+use super::icrs::Motion;
 use super::{Direction, Ground, earth, time};
-use sofars::astro::{IauAstrom, apcs, atciqz, aticq, atioq, atoiq, pvtob, refco};
+use sofars::astro::{IauAstrom, apcs, atciq, atciqz, aticq, atioq, atoiq, pvtob, refco};
 use sofars::erst::era00;
-use sofars::pnp::{bpn2xy, eors, pnm06a, s06, sp00};
+use sofars::pnp::sp00;
 use sofars::vm::trxpv;
 
 /// An instant as the sky needs it: scales, bias-precession-nutation (IAU 2006/2000A), the Earth's motion, sidereal time.
@@ -40,8 +42,19 @@ impl Moment {
         (FIRST_JD..=LAST_JD).contains(&(utc.0 + utc.1))
     }
 
+    /// From the grid that a whole run shares (`grid.rs`), within 0.5 µas of [`Moment::new`]; UT1 taken as UTC.
+    pub fn shared(utc: (f64, f64)) -> Moment {
+        Moment::made(utc, 0.0, |tt| {
+            grid::at(tt).unwrap_or_else(|| grid::direct(tt))
+        })
+    }
+
     /// With UT1 − UTC, seconds.
     pub fn with_ut1(utc: (f64, f64), ut1_minus_utc_s: f64) -> Moment {
+        Moment::made(utc, ut1_minus_utc_s, grid::direct)
+    }
+
+    fn made(utc: (f64, f64), ut1_minus_utc_s: f64, slow: fn((f64, f64)) -> Slow) -> Moment {
         let jd = utc.0 + utc.1;
         let utc = if !jd.is_finite() || !utc.0.is_finite() || !utc.1.is_finite() {
             (time::J2000, 0.0)
@@ -57,10 +70,11 @@ impl Moment {
         };
         let tt = time::tt_from_utc(utc);
         let ut1 = time::ut1_from_utc(utc, dut1);
-        let npb = pnm06a(tt.0, tt.1);
-        let (x, y) = bpn2xy(&npb);
-        let origins = eors(&npb, s06(tt.0, tt.1, x, y));
-        let earth = earth::at(tt);
+        let Slow {
+            matrix,
+            equation_of_origins_rad,
+            earth,
+        } = slow(tt);
         let mut astrom = IauAstrom::default();
         let centre = [[0.0; 3]; 2];
         apcs(
@@ -71,16 +85,21 @@ impl Moment {
             &earth.heliocentric[0],
             &mut astrom,
         );
-        astrom.bpn = npb;
+        astrom.bpn = matrix;
         Moment {
             utc,
             tt,
             ut1,
-            equation_of_origins_rad: origins,
-            sidereal_time_rad: era00(ut1.0, ut1.1) - origins,
+            equation_of_origins_rad,
+            sidereal_time_rad: era00(ut1.0, ut1.1) - equation_of_origins_rad,
             earth,
             astrom,
         }
+    }
+
+    /// The Julian epoch (TT), for proper motions.
+    pub fn julian_epoch(&self) -> f64 {
+        time::julian_epoch(self.tt)
     }
 
     /// The bias-precession-nutation matrix, GCRS to true equator and equinox of date.
@@ -91,13 +110,28 @@ impl Moment {
     /// Geocentric apparent place (true equator and equinox of date) of an ICRS astrometric direction: ERFA `atciqz`.
     pub fn apparent(&self, icrs: Direction) -> Direction {
         let (ra, dec) = icrs.radians();
-        Direction::from_radians(atciqz(ra, dec, &mut self.astrom.clone()))
+        Direction::from_radians(atciqz(ra, dec, &mut { self.astrom }))
+    }
+
+    /// Geocentric apparent place of a star from its ICRS place at J2000.0 and its motion: ERFA `atciq`.
+    pub fn apparent_of_star(&self, icrs: Direction, motion: Motion) -> Direction {
+        let (ra, dec) = icrs.radians();
+        let arcsec = |x: f64| (x / 3600.0).to_radians();
+        Direction::from_radians(atciq(
+            ra,
+            dec,
+            arcsec(motion.ra_arcsec) / dec.cos().max(1e-9),
+            arcsec(motion.dec_arcsec),
+            motion.parallax_arcsec,
+            motion.radial_km_s,
+            &mut { self.astrom },
+        ))
     }
 
     /// ICRS astrometric direction of a geocentric apparent place: ERFA `aticq`.
     pub fn astrometric(&self, apparent: Direction) -> Direction {
         let (ra, dec) = apparent.radians();
-        Direction::from_radians(aticq(ra, dec, &mut self.astrom.clone()))
+        Direction::from_radians(aticq(ra, dec, &mut { self.astrom }))
     }
 
     /// The instant seen from a place on the ground, with a standard atmosphere.
@@ -148,8 +182,7 @@ pub struct Station {
     /// The observer from the Earth's centre, au, GCRS axes.
     pub from_centre_au: [f64; 3],
     astrom: IauAstrom,
-    /// The two refraction constants of `refco`, radians.
-    refraction_rad: (f64, f64),
+    air: Air,
 }
 
 /// Metres in an astronomical unit (IAU 2012 resolution B2).
@@ -204,12 +237,7 @@ impl Station {
             sidereal_time_rad: astrom.eral,
             from_centre_au: pv[0].map(|m| m / AU_M),
             astrom,
-            refraction_rad: refco(
-                air.pressure_hpa,
-                air.temperature_c,
-                air.humidity,
-                air.wavelength_um,
-            ),
+            air,
         }
     }
 
@@ -239,11 +267,6 @@ impl Station {
         self.from_observed("A", azimuth_deg, zenith, refracted)
     }
 
-    /// ICRS astrometric direction of a topocentric airless hour angle and declination.
-    pub fn from_hour_angle(&self, hour_angle_deg: f64, dec_deg: f64) -> Direction {
-        self.from_observed("H", hour_angle_deg, dec_deg.clamp(-90.0, 90.0), false)
-    }
-
     fn from_observed(
         &self,
         kind: &str,
@@ -267,7 +290,13 @@ impl Station {
     fn astrom(&self, refracted: bool) -> IauAstrom {
         let mut astrom = self.astrom;
         if refracted {
-            (astrom.refa, astrom.refb) = self.refraction_rad;
+            let air = self.air;
+            (astrom.refa, astrom.refb) = refco(
+                air.pressure_hpa,
+                air.temperature_c,
+                air.humidity,
+                air.wavelength_um,
+            );
         }
         astrom
     }

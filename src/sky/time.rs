@@ -199,8 +199,13 @@ pub fn day_and_seconds(utc: (f64, f64)) -> (i64, f64) {
     (day, part * day_length_s(day))
 }
 
-/// A two-part Julian date as MJD, whole days and the rest, [0, 1).
+/// A two-part Julian date as MJD, whole days and the rest, [0, 1). Dates a million years away count as that.
 fn whole_and_part((a, b): (f64, f64)) -> (i64, f64) {
+    const FAR_D: f64 = 365.25e6;
+    if !(a + b - MJD_ZERO).abs().le(&FAR_D) {
+        let sign = if a + b < 0.0 { -1.0 } else { 1.0 };
+        return ((sign * FAR_D) as i64, 0.0);
+    }
     // the larger part first, so that nothing of the smaller is lost
     let (a, b) = if a.abs() >= b.abs() { (a, b) } else { (b, a) };
     let big = a - MJD_ZERO;
@@ -227,6 +232,7 @@ pub fn add_seconds(utc: (f64, f64), seconds: f64) -> (f64, f64) {
 
 /// A two-part Julian date from an MJD and seconds of 86,400 a day, carried.
 fn two_part(day: i64, seconds: f64) -> (f64, f64) {
+    let seconds = if seconds.is_finite() { seconds } else { 0.0 };
     let carry = (seconds / 86_400.0).floor();
     (
         MJD_ZERO + (day as f64 + carry),
@@ -254,6 +260,13 @@ pub fn tai_from_utc(utc: (f64, f64)) -> (f64, f64) {
 pub fn ut1_from_utc(utc: (f64, f64), ut1_minus_utc_s: f64) -> (f64, f64) {
     let (day, seconds) = day_and_seconds(utc);
     two_part(day, seconds + ut1_minus_utc_s)
+}
+
+/// How far UT1 may be from UTC where it is taken as equal, seconds: 0.9 since 1972 (by which leap seconds keep them
+/// together, ITU-R TF.460), nothing before, when a time is UT itself. One second is 15″ of hour angle.
+pub fn ut1_error_s(utc: (f64, f64)) -> f64 {
+    let (day, _) = day_and_seconds(utc);
+    if day < LEAP_ERA { 0.0 } else { 0.9 }
 }
 
 /// TDB of a UTC instant.

@@ -11,35 +11,41 @@ pub struct Changed {
     pub part: usize,
     /// Value of the changed digit's place in the part: 1 for its units, 10 for its tens, 0.1 for the first decimal.
     pub place: f64,
+    /// By how much the digit changed; 0 for exchanged ones.
+    pub off_by: u64,
     /// A digit was put in front that may have been lost.
     pub lost: bool,
 }
 
-/// The angle with two neighbouring digits exchanged, within a part or across the blank between two parts.
+/// The angle with two neighbouring digits exchanged, within a part or across the mark between two parts.
 pub fn exchanged(angle: &Angle) -> impl Iterator<Item = Changed> + use<> {
     let mut list = Vec::new();
-    for part in 0..angle.parts().len() {
-        let number = angle.parts()[part].number;
-        let digits = usize::from(number.whole_digits) + usize::from(number.places);
-        for k in 0..digits.saturating_sub(1) as u32 {
-            let unit = 10u64.pow(k);
-            let (low, high) = (
-                number.mantissa / unit % 10,
-                number.mantissa / unit / 10 % 10,
-            );
-            if low == high {
-                continue;
-            }
-            let mut changed = *angle;
-            let m = &mut changed.parts_mut()[part].number.mantissa;
-            *m = *m - low * unit - high * unit * 10 + high * unit + low * unit * 10;
-            list.push(Changed {
-                angle: changed,
-                part,
-                place: 10f64.powi(k as i32 + 1 - i32::from(number.places)),
-                lost: false,
-            });
+    // every digit with its part and its place in that part, as they stand in a row
+    let mut row: Vec<(usize, u32, u64)> = Vec::new();
+    for (part, p) in angle.parts().iter().enumerate() {
+        let digits = u32::from(p.number.whole_digits) + u32::from(p.number.places);
+        for k in (0..digits.min(18)).rev() {
+            row.push((part, k, p.number.mantissa / 10u64.pow(k) % 10));
         }
+    }
+    for pair in row.windows(2) {
+        let [(part, k, left), (next, l, right)] = [pair[0], pair[1]];
+        if left == right {
+            continue;
+        }
+        let mut changed = *angle;
+        for (part, k, old, new) in [(part, k, left, right), (next, l, right, left)] {
+            let m = &mut changed.parts_mut()[part].number.mantissa;
+            *m = *m - old * 10u64.pow(k) + new * 10u64.pow(k);
+        }
+        let places = angle.parts()[part].number.places;
+        list.push(Changed {
+            angle: changed,
+            part,
+            place: 10f64.powi(k as i32 - i32::from(places)),
+            off_by: 0,
+            lost: false,
+        });
     }
     list.retain(in_range);
     list.into_iter()
@@ -62,6 +68,7 @@ pub fn miskeyed(angle: &Angle) -> impl Iterator<Item = Changed> + use<> {
                     angle: changed,
                     part,
                     place: 10f64.powi(k as i32 - i32::from(number.places)),
+                    off_by: old.abs_diff(new),
                     lost: false,
                 });
             }
@@ -76,6 +83,7 @@ pub fn miskeyed(angle: &Angle) -> impl Iterator<Item = Changed> + use<> {
                     angle: changed,
                     part,
                     place: 10f64.powi(i32::from(number.whole_digits)),
+                    off_by: new,
                     lost: true,
                 });
             }

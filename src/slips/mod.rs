@@ -1,11 +1,245 @@
-//! Slips: what people do wrong, tried one at a time and in pairs on a report that cannot be right as written.
+//! Slips: what people do wrong, tried one at a time, then in pairs, on a report that cannot be right as written.
+//!
+//! A reading ([`readings`]) is the report as it may have been meant. It is brought to the sky and held to the same rules of
+//! place and time as the report itself, and to the other reports of its object; it is offered only if nothing is left
+//! standing. Offered readings are ranked by how common the slip is ([`priors`]) and how sharply the facts confirm it
+//! ([`evidence`]). Nothing is ever applied: outputs show what is offered, and an editor decides.
 
 pub mod digits;
+mod evidence;
+pub mod priors;
+mod readings;
+mod sieve;
 
-use crate::report::{Frame, Slip};
-use crate::rules::{Case, Sisters};
+use crate::report::{Becomes, Finding, Frame, Meant, Slip};
+use crate::rules::{Case, Sisters, of_place_and_time};
+use readings::{Changes, Reading};
 
-/// What probably happened to a report with a query or reject about where or when, best first.
-pub(crate) fn explain(_case: &Case, _to: Frame, _sisters: Option<&Sisters>) -> Vec<Slip> {
-    Vec::new()
+/// At most so many are offered.
+const MOST: usize = 5;
+
+/// A reading with which every stated fact agrees.
+struct Kept {
+    kinds: Vec<&'static str>,
+    reading: Reading,
+    meant: Meant,
+    /// Prior times likelihood, not yet a share.
+    score: f64,
+    because: String,
+}
+
+/// What probably happened to a report with a query or reject about where or when, best first, at most five; none where no
+/// slip explains it. `to` is the frame that readings are restated in, `sisters` the word of the object's other reports.
+pub(crate) fn explain(case: &Case, to: Frame, sisters: Option<&Sisters>) -> Vec<Slip> {
+    let trial = Case { text: "", ..*case };
+    let broken = of_place_and_time(&trial);
+    let outlying =
+        sisters.is_some_and(|s| matches!(s.agrees(case.report, case.meant), Some((false, _))));
+    if broken.is_empty() && !outlying && case.meant.read.is_some() {
+        return Vec::new();
+    }
+    let sieve = sieve::Sieve::new(case, sisters);
+    let mut kept = Vec::new();
+    let step = case.meant.reduced.map_or(0.0, |r| r.step_arcsec);
+    let still = outlying && sisters.is_some_and(|s| !s.move_beyond(step));
+    let singles = singles(case, &broken, outlying, still);
+    for reading in &singles {
+        if sieve.passes(reading)
+            && let Some(reading) = hold(case, vec![reading.kind], reading, sisters)
+        {
+            kept.push(reading);
+        }
+    }
+    if kept.is_empty() {
+        for (kinds, reading) in pairs(case, &broken, outlying) {
+            if sieve.passes(&reading)
+                && let Some(reading) = hold(case, kinds, &reading, sisters)
+            {
+                kept.push(reading);
+            }
+        }
+    }
+    offer(case, kept, to)
+}
+
+/// Single readings of the kinds that can mend what is broken: another time does not move a star into its constellation.
+fn singles(case: &Case, broken: &[Finding], outlying: bool, still: bool) -> Vec<Reading> {
+    let can = |changes: Changes| {
+        broken.iter().all(|f| mends(changes, f.rule))
+            && !(outlying && changes == Changes::Site)
+            && !(still && changes == Changes::Time)
+    };
+    let mut list = Vec::new();
+    if can(Changes::Time) {
+        list.extend(readings::of_time(case));
+    }
+    if can(Changes::Site) {
+        list.extend(readings::of_site(case));
+    }
+    if can(Changes::Place) {
+        list.extend(readings::of_place(case));
+    }
+    list
+}
+
+/// Can a change of this sort take away a finding of that rule?
+fn mends(changes: Changes, rule: &str) -> bool {
+    match rule {
+        "date-impossible" | "instant-in-future" | "instant-disagrees" | "daylight" => {
+            changes == Changes::Time || (rule == "daylight" && changes == Changes::Site)
+        }
+        "site-out-of-range" | "site-disagrees" => changes == Changes::Site,
+        "ra-out-of-range"
+        | "dec-out-of-range"
+        | "sexagesimal-out-of-range"
+        | "position-disagrees"
+        | "constellation-disagrees" => changes == Changes::Place,
+        "near-sun" => changes != Changes::Site,
+        // a star's place asks no time, a planet's does; the check itself tells them apart
+        "object-elsewhere" => changes != Changes::Site,
+        "never-rises" => changes != Changes::Time,
+        _ => true,
+    }
+}
+
+/// Pairs of the commonest slips of different sorts, for what no single one explains.
+fn pairs(case: &Case, broken: &[Finding], outlying: bool) -> Vec<(Vec<&'static str>, Reading)> {
+    let _ = (broken, outlying);
+    let mut list = Vec::new();
+    let mut firsts = readings::of_time(case);
+    firsts.extend(readings::of_site(case));
+    let common_places = |r: &Reading| !matches!(r.kind, "digit-miskeyed" | "digits-exchanged");
+    firsts.extend(readings::of_place(case).into_iter().filter(common_places));
+    for (k, first) in firsts.iter().enumerate() {
+        let meant = case.mean(&first.report);
+        let changed = Case {
+            report: &first.report,
+            meant: &meant,
+            ..*case
+        };
+        let seconds = match first.changes {
+            Changes::Time => [readings::of_site(&changed), readings::of_place(&changed)].concat(),
+            Changes::Site => [readings::of_site(&changed), readings::of_place(&changed)].concat(),
+            Changes::Place => Vec::new(),
+        };
+        let seconds = seconds.into_iter().chain(match first.changes {
+            Changes::Time => readings::of_time(&changed),
+            _ => Vec::new(),
+        });
+        for second in seconds.filter(common_places) {
+            // each pair once, and no slip twice
+            if second.kind == first.kind
+                || firsts[..k]
+                    .iter()
+                    .any(|f| f.kind == second.kind && f.changes == first.changes)
+            {
+                continue;
+            }
+            let reading = Reading {
+                prior: first.prior * second.prior * priors::priors().pair,
+                words: format!("{}, and {}", first.words, second.words),
+                ..second
+            };
+            list.push((vec![first.kind, second.kind], reading));
+        }
+    }
+    list
+}
+
+/// Holds a reading to every stated fact: kept with its score, or nothing.
+fn hold(
+    case: &Case,
+    kinds: Vec<&'static str>,
+    reading: &Reading,
+    sisters: Option<&Sisters>,
+) -> Option<Kept> {
+    let meant = case.mean(&reading.report);
+    meant.reduced?;
+    // what was known of time and site must not be lost by the change
+    if (case.meant.instant.is_some() && meant.instant.is_none())
+        || (case.meant.site.is_some() && meant.site.is_none())
+    {
+        return None;
+    }
+    let changed = Case {
+        report: &reading.report,
+        meant: &meant,
+        text: "",
+        ..*case
+    };
+    if !of_place_and_time(&changed).is_empty()
+        || meant.instant_trouble.is_some() && case.meant.instant_trouble.is_none()
+    {
+        return None;
+    }
+    let sister = match sisters.map(|s| s.agrees(&reading.report, &meant)) {
+        None => None,
+        Some(Some((true, distance))) => Some(distance),
+        Some(_) => return None,
+    };
+    if !evidence::zone_fits(&meant) && evidence::zone_fits(case.meant) {
+        return None;
+    }
+    let facts = evidence::weigh(&changed, sister.zip(sisters.map(Sisters::count)));
+    Some(Kept {
+        kinds,
+        score: reading.prior * facts.likelihood,
+        because: facts.because,
+        reading: reading.clone(),
+        meant,
+    })
+}
+
+/// The best of those kept, with their shares.
+fn offer(case: &Case, mut kept: Vec<Kept>, to: Frame) -> Vec<Slip> {
+    kept.sort_by(|a, b| {
+        b.score
+            .total_cmp(&a.score)
+            .then_with(|| a.reading.words.cmp(&b.reading.words))
+    });
+    kept.truncate(MOST);
+    // what is a hundred times less likely than the best is no help to an editor
+    let least = kept.first().map_or(0.0, |best| best.score / 100.0);
+    kept.retain(|k| k.score >= least);
+    let sum: f64 = kept.iter().map(|k| k.score).sum();
+    kept.into_iter()
+        .map(|k| {
+            let words = evidence::told(case, &k.reading, &k.meant);
+            let name = k.kinds.join(" and ");
+            Slip {
+                because: format!("If {}, {}.", evidence::clause(&k.kinds), k.because),
+                reading: words,
+                weight: if sum > 0.0 {
+                    k.score / sum
+                } else {
+                    1.0 / name.len().max(1) as f64
+                },
+                becomes: becomes(case, &k, to),
+                kinds: k.kinds,
+            }
+        })
+        .collect()
+}
+
+/// The members of the record that a reading changes.
+fn becomes(case: &Case, kept: &Kept, to: Frame) -> Vec<Becomes> {
+    let meant = crate::reduction::mean(&kept.reading.report, case.house, to);
+    let mut list = Vec::new();
+    let (old, new) = (case.report, &kept.reading.report);
+    if (old.position != new.position || old.equinoxes != new.equinoxes)
+        && let (Some(read), Some(reduced)) = (meant.read, meant.reduced)
+    {
+        list.push(Becomes::Read(read, reduced));
+    }
+    if old.instants != new.instants
+        && let Some(instant) = meant.instant
+    {
+        list.push(Becomes::Instant(instant));
+    }
+    if old.site != new.site
+        && let Some(site) = meant.site
+    {
+        list.push(Becomes::Site(site));
+    }
+    list
 }

@@ -49,16 +49,20 @@ fn run(rule: &Rule, case: &Case, selection: &Selection) -> Vec<Finding> {
 
 /// Takes out what another finding says better; returns what gave way, with the rule it gave way to.
 fn one_cause_one_finding(findings: &mut Vec<Finding>) -> Vec<(&'static str, &'static str)> {
-    let standing: Vec<&'static str> = findings.iter().map(|f| f.rule).collect();
+    // a note speaks for nothing heavier
+    let standing: Vec<(&'static str, Weight)> =
+        findings.iter().map(|f| (f.rule, f.weight)).collect();
     let mut gave_way = Vec::new();
     findings.retain(|finding| {
         let better = TABLE
             .iter()
             .find(|rule| rule.name == finding.rule)
             .and_then(|rule| {
-                rule.gives_way_to
-                    .iter()
-                    .find(|other| standing.contains(other))
+                rule.gives_way_to.iter().find(|other| {
+                    standing.iter().any(|(name, weight)| {
+                        name == *other && (*weight > Weight::Note || finding.weight == Weight::Note)
+                    })
+                })
             });
         if let Some(better) = better {
             gave_way.push((finding.rule, *better));

@@ -36,6 +36,11 @@ impl Sisters {
         Some((distance <= self.steady.allowed_arcsec(&sighting), distance))
     }
 
+    /// Do they move, so that another time is another place? By more than a report's own step in a day.
+    pub fn move_beyond(&self, step_arcsec: f64) -> bool {
+        self.steady.arcsec_per_h() * 24.0 > 3.0 * step_arcsec
+    }
+
     /// How many others there are that agree among themselves.
     pub fn count(&self) -> usize {
         self.count
