@@ -185,13 +185,9 @@ fn main() {
     }
     constellations(&root, &mut table);
     // by their first two letters, then longest first, so that the first match is the longest
-    let key = |s: &str| {
-        let mut c = s.chars();
-        (c.next().unwrap_or(' '), c.next().unwrap_or('\0'))
-    };
     table.sort_by(|a, b| {
-        key(&a.0)
-            .cmp(&key(&b.0))
+        slot(&a.0)
+            .cmp(&slot(&b.0))
             .then(b.0.chars().count().cmp(&a.0.chars().count()))
             .then(a.cmp(b))
     });
@@ -205,8 +201,33 @@ fn main() {
         .expect("to a string");
     }
     code.push_str("];\n");
+    let starts: Vec<usize> = (0..=SLOTS)
+        .map(|n| table.partition_point(|e| slot(&e.0) < n))
+        .collect();
+    writeln!(
+        code,
+        "pub(super) static STARTS: [u16; {}] = {starts:?};",
+        SLOTS + 1
+    )
+    .expect("to a string");
     let out = Path::new(&env::var("OUT_DIR").expect("cargo sets it")).join("words.rs");
     fs::write(out, code).expect("writable OUT_DIR");
+}
+
+/// Slots of the table: 27 for each first letter (by the second letter, or 0 for none), then one for all else.
+/// The reader's `words.rs` reckons them the same way.
+const SLOTS: usize = 26 * 27 + 1;
+
+fn slot(folded: &str) -> usize {
+    let mut c = folded.chars();
+    let letter = |c: Option<char>| {
+        c.filter(char::is_ascii_lowercase)
+            .map(|c| c as usize - 'a' as usize)
+    };
+    match letter(c.next()) {
+        Some(first) => first * 27 + letter(c.next()).map_or(0, |second| second + 1),
+        None => SLOTS - 1,
+    }
 }
 
 fn strings(value: &serde_yaml::Value) -> Option<Vec<String>> {

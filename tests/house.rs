@@ -272,7 +272,7 @@ fn own_objects_are_read_from_csv() {
     assert!((house.known_objects[0].ra_deg - 83.632_916_666).abs() < 1e-8);
     assert_eq!(house.known_objects[0].radius_arcsec, 120.0);
     assert!((house.known_objects[1].dec_deg + 5.5).abs() < 1e-12);
-    assert_eq!(house.object_lists, [list.clone()]);
+    assert_eq!(house.object_lists, std::slice::from_ref(&list));
     for (text, told) in [
         ("name,ra,decl.x\n", "decl.x"),
         ("name,ra,dec\nA,25 00 00,1\n", "line 2"),

@@ -32,17 +32,23 @@ fn grid_against_direct() {
         let days = (next(&mut state) - 0.5) * years * 365.25;
         let tt = (time::J2000 + days.floor(), days - days.floor());
         let (near, exact) = (grid::at(tt).unwrap(), grid::direct(tt));
-        for i in 0..3 {
-            for j in 0..3 {
-                matrix = matrix.max((near.matrix[i][j] - exact.matrix[i][j]).abs() * UAS);
-            }
-            // au/day over the speed of light (173.14 au/day)
-            let v =
-                (near.earth.barycentric[1][i] - exact.earth.barycentric[1][i]).abs() / 173.144_6;
-            velocity = velocity.max(v * UAS);
-            sun = sun
-                .max((near.earth.heliocentric[0][i] - exact.earth.heliocentric[0][i]).abs() * UAS);
+        let apart = |a: &[f64; 3], b: &[f64; 3]| -> f64 {
+            a.iter()
+                .zip(b)
+                .map(|(x, y)| (x - y).abs())
+                .fold(0.0, f64::max)
+                * UAS
+        };
+        for (a, b) in near.matrix.iter().zip(&exact.matrix) {
+            matrix = matrix.max(apart(a, b));
         }
+        // au/day over the speed of light (173.14 au/day)
+        let moving = apart(&near.earth.barycentric[1], &exact.earth.barycentric[1]);
+        velocity = velocity.max(moving / 173.144_6);
+        sun = sun.max(apart(
+            &near.earth.heliocentric[0],
+            &exact.earth.heliocentric[0],
+        ));
         let o = near.equation_of_origins_rad - exact.equation_of_origins_rad;
         origins = origins.max(o.abs() * UAS);
     }

@@ -3,6 +3,12 @@
 //! A row's own tolerance stands beside its computation, with why where it is wider than the published digits. The
 //! rows that nothing here reaches are printed by name and counted, so that none is left out unseen.
 
+#![allow(
+    clippy::inconsistent_digit_grouping,
+    clippy::approx_constant,
+    clippy::excessive_precision
+)] // digits as published
+
 use colure::report::{Angle, Mark, Number, Part};
 use colure::sky::bodies::{self, Body};
 use colure::sky::icrs::Motion;

@@ -475,7 +475,7 @@ fn significant(value: f64) -> f64 {
 fn instant(instant: &InstantMeant) -> InstantRecord {
     InstantRecord {
         utc: printed::utc(instant.utc),
-        jd_utc: rounded(time::jd_from_utc(instant.utc), 9),
+        jd_utc: rounded(time::jd_from_utc(instant.utc), 8),
         step_s: rounded(instant.step_s, 9),
     }
 }

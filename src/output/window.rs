@@ -189,7 +189,7 @@ impl SourceCode for Window {
         };
         Ok(Box::new(MietteSpanContents::new_named(
             self.name.clone(),
-            self.text[shown.start..shown.end].as_bytes(),
+            &self.text.as_bytes()[shown.start..shown.end],
             (shown.start, shown.len()).into(),
             self.lines[from].number - 1,
             column,

@@ -8,7 +8,7 @@ use super::site::{elevation, site_coordinates};
 use super::stet::stet;
 use super::text::{Text, is_blank};
 use super::uncertainty::{Uncertainty, uncertainty};
-use super::words::{Phrase, Word, phrase};
+use super::words::{Phrase, Word, meanings, phrase};
 use crate::report::{Angle, DateWritten, InstantWritten, SiteWritten, Stet};
 use crate::span::{Span, Spanned};
 
@@ -104,9 +104,7 @@ pub fn atoms<'a>(line: Text<'a>, number: usize, awaiting: &mut bool, out: &mut V
 }
 
 fn atom<'a>(rest: Text<'a>, c: char, after_label: bool, awaiting: bool) -> (Text<'a>, Kind<'a>) {
-    let word_start = !rest
-        .before()
-        .is_some_and(|b| b.is_alphanumeric() || b == '_');
+    let word_start = !rest.before().is_some_and(char::is_alphanumeric);
     if c == '['
         && let Ok((r, s)) = stet(rest)
     {
@@ -156,24 +154,29 @@ fn atom<'a>(rest: Text<'a>, c: char, after_label: bool, awaiting: bool) -> (Text
     }
     let numeric = c.is_ascii_digit();
     let signed = c == '+' || c == '±' || super::number::is_dash(c);
-    if (numeric || c.is_alphabetic())
+    let leads = if numeric {
+        Leads::NUMBER
+    } else {
+        Leads::of(rest, c)
+    };
+    if leads.instant
         && let Ok((r, i)) = instant(rest)
         // "RA 9.5958 Dec +33": no ninth of December
         && !(awaiting && yearless(&i))
     {
         return (r, Kind::Instant(Box::new(i)));
     }
-    if (numeric || signed || c.is_alphabetic())
+    if (leads.site || signed)
         && let Ok((r, s)) = site_coordinates(rest)
     {
         return (r, Kind::Site(Box::new(s)));
     }
-    if (numeric || c.is_alphabetic())
+    if leads.equinox
         && let Ok((r, t)) = equinox_tag(rest)
     {
         return (r, Kind::Equinox(t));
     }
-    if (c.is_alphabetic() || numeric)
+    if leads.elevation
         && let Ok((r, m)) = elevation(rest)
     {
         return (r, Kind::Elevation(m));
@@ -215,6 +218,58 @@ fn atom<'a>(rest: Text<'a>, c: char, after_label: bool, awaiting: bool) -> (Text
         return plain(rest);
     }
     (rest.skip(c.len_utf8()), Kind::Mark(c))
+}
+
+/// What can begin at a place, by the words that stand there: most words of prose begin nothing.
+struct Leads {
+    instant: bool,
+    site: bool,
+    equinox: bool,
+    elevation: bool,
+}
+
+impl Leads {
+    /// A digit can begin anything.
+    const NUMBER: Leads = Leads {
+        instant: true,
+        site: true,
+        equinox: true,
+        elevation: true,
+    };
+
+    fn of(rest: Text<'_>, c: char) -> Leads {
+        let mut leads = Leads {
+            instant: false,
+            site: false,
+            equinox: matches!(c, 'J' | 'B' | 'j' | 'b'),
+            elevation: false,
+        };
+        for word in meanings(rest) {
+            match word {
+                Word::Month(_)
+                | Word::Weekday(_)
+                | Word::Universal
+                | Word::Julian
+                | Word::ModifiedJulian
+                | Word::HeliocentricJulian
+                | Word::BarycentricJulian => {
+                    leads.instant = true;
+                }
+                Word::Compass(_) | Word::Latitude | Word::Longitude => leads.site = true,
+                Word::Equinox
+                | Word::Epoch
+                | Word::OfDate
+                | Word::Mean
+                | Word::Apparent
+                | Word::Icrs
+                | Word::Fk5
+                | Word::Fk4 => leads.equinox = true,
+                _ => {}
+            }
+            leads.elevation |= matches!(word, Word::Elevation | Word::Altitude);
+        }
+        leads
+    }
 }
 
 /// A word of no known meaning, with what is glued to it.

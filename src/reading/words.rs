@@ -130,17 +130,7 @@ impl Phrase<'_> {
 /// A phrase ends at a word's end; a digit may follow it directly (`RA2000`, `α1950`).
 pub fn phrases<'a>(input: Text<'a>) -> impl Iterator<Item = (Text<'a>, Phrase<'a>)> {
     let s = input.as_str();
-    let mut heads = s.chars();
-    let key = (
-        heads.next().map_or('\0', fold),
-        heads.next().map_or('\0', fold),
-    );
-    let range = bucket(key.0, Some(key.1)).chain(if key.1 == '\0' {
-        0..0
-    } else {
-        bucket(key.0, None)
-    });
-    range.filter_map(move |i| {
+    bucket(s).filter_map(move |i| {
         let entry = &table::WORDS[i];
         let length = matches(s, entry)?;
         Some((
@@ -152,6 +142,11 @@ pub fn phrases<'a>(input: Text<'a>) -> impl Iterator<Item = (Text<'a>, Phrase<'a
             },
         ))
     })
+}
+
+/// The meanings of every phrase at the beginning of `input`.
+pub fn meanings(input: Text<'_>) -> impl Iterator<Item = Word> {
+    phrases(input).map(|(_, p)| table::WORDS[p.first].word)
 }
 
 /// The longest phrase at the beginning of `input`, with all the meanings it has.
@@ -233,15 +228,20 @@ pub fn language(text: &str) -> Option<&'static str> {
     }
 }
 
-fn bucket(first: char, second: Option<char>) -> std::ops::Range<usize> {
-    let key = (first, second.unwrap_or('\0'));
-    let of = |e: &Entry| {
-        let mut c = e.folded.chars();
-        (c.next().unwrap_or(' '), c.next().unwrap_or('\0'))
+/// The entries that can stand at the beginning of `s`: those of its first two letters (the build script's slots).
+fn bucket(s: &str) -> std::ops::Range<usize> {
+    let mut c = s.chars().map(fold);
+    let letter = |c: Option<char>| {
+        c.filter(char::is_ascii_lowercase)
+            .map(|c| c as usize - 'a' as usize)
     };
-    let from = table::WORDS.partition_point(|e| of(e) < key);
-    let to = table::WORDS.partition_point(|e| of(e) <= key);
-    from..to
+    let first = c.next();
+    let slot = match letter(first) {
+        Some(first) => first * 27 + letter(c.next()).map_or(0, |second| second + 1),
+        None if first.is_none_or(|c| c.is_ascii_digit() || c == ' ') => return 0..0,
+        None => table::STARTS.len() - 2,
+    };
+    usize::from(table::STARTS[slot])..usize::from(table::STARTS[slot + 1])
 }
 
 /// Bytes of `s` that the entry covers, if it stands at its beginning as whole words.

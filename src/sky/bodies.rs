@@ -39,7 +39,7 @@ impl Body {
     /// What its theory may be off at worst, arcsec (src/sky/data/README.md).
     pub fn theory_arcsec(self) -> f64 {
         match self {
-            Body::Sun => 0.015,
+            Body::Sun => 0.02,
             Body::Moon => 17.0,
             Body::Mercury => 1.9,
             Body::Venus => 11.0,
@@ -190,9 +190,9 @@ fn motion(body: Body, moment: &Moment) -> f64 {
     const HOURS: f64 = 0.5;
     let mut later = *moment;
     later.tt.1 += HOURS / 24.0;
-    let step = |pv: &mut [[f64; 3]; 2]| {
-        for i in 0..3 {
-            pv[0][i] += pv[1][i] * HOURS / 24.0;
+    let step = |[place, speed]: &mut [[f64; 3]; 2]| {
+        for (x, v) in place.iter_mut().zip(speed) {
+            *x += *v * HOURS / 24.0;
         }
     };
     step(&mut later.earth.barycentric);

@@ -11,7 +11,7 @@ pub fn to_icrs(
     refracted: bool,
     station: &Station,
 ) -> Direction {
-    station.from_horizontal(azimuth_deg, altitude_deg, refracted)
+    station.icrs_of_horizontal(azimuth_deg, altitude_deg, refracted)
 }
 
 /// Azimuth and altitude, degrees, of an ICRS astrometric direction: ERFA `atco13`.

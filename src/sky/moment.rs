@@ -257,17 +257,17 @@ impl Station {
     }
 
     /// ICRS astrometric direction of an observed azimuth and altitude: ERFA `atoiq` and `aticq`.
-    pub fn from_horizontal(
+    pub fn icrs_of_horizontal(
         &self,
         azimuth_deg: f64,
         altitude_deg: f64,
         refracted: bool,
     ) -> Direction {
         let zenith = 90.0 - altitude_deg.clamp(-90.0, 90.0);
-        self.from_observed("A", azimuth_deg, zenith, refracted)
+        self.icrs_of_observed("A", azimuth_deg, zenith, refracted)
     }
 
-    fn from_observed(
+    fn icrs_of_observed(
         &self,
         kind: &str,
         first_deg: f64,

@@ -180,10 +180,15 @@ fn hold(
     if !evidence::zone_fits(&meant) && evidence::zone_fits(case.meant) {
         return None;
     }
+    // a zone that the written longitude cannot have speaks for the longitude's sign
+    let zone = match (evidence::zone_fits(case.meant), evidence::zone_fits(&meant)) {
+        (false, false) => 0.03,
+        _ => 1.0,
+    };
     let facts = evidence::weigh(&changed, sister.zip(sisters.map(Sisters::count)));
     Some(Kept {
         kinds,
-        score: reading.prior * facts.likelihood,
+        score: reading.prior * facts.likelihood * zone,
         because: facts.because,
         reading: reading.clone(),
         meant,

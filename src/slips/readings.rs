@@ -422,7 +422,7 @@ fn days_on(date: &DateWritten, days: i64) -> Option<DateWritten> {
             if !(1..=12).contains(&month) {
                 return None;
             }
-            let scale = 10u64.pow(u32::from(day.places));
+            let scale = 10u64.checked_pow(u32::from(day.places))?;
             let whole = (day.mantissa / scale) as u32;
             let (y, m, d) = civil(day_number(i64::from(year), month, whole) + days);
             day.mantissa = day.mantissa % scale + u64::from(d) * scale;
@@ -437,8 +437,10 @@ fn days_on(date: &DateWritten, days: i64) -> Option<DateWritten> {
             })
         }
         DateWritten::Julian { mut number, count } => {
-            let scale = 10u64.pow(u32::from(number.places));
-            number.mantissa = number.mantissa.checked_add_signed(days * scale as i64)?;
+            let scale = 10u64.checked_pow(u32::from(number.places))?;
+            number.mantissa = number
+                .mantissa
+                .checked_add_signed(days.checked_mul(i64::try_from(scale).ok()?)?)?;
             Some(DateWritten::Julian { number, count })
         }
     }

@@ -4,11 +4,17 @@
 //! to all the facts.
 
 use super::readings::{Changes, Reading};
-use crate::report::{AngleUnit, Equinox, HorizonQuantity, PositionKind, System};
+use crate::report::{AngleUnit, Equinox, HorizonQuantity, Meant, PositionKind, System};
+use crate::rules::identity::named;
 use crate::rules::{Case, Sisters, angles};
+use crate::sky::{Direction, separation_deg};
 
 /// What a quick look needs.
-pub struct Sieve {
+pub struct Sieve<'a> {
+    case: Case<'a>,
+    sisters: Option<&'a Sisters>,
+    /// Where the named object is, and how far from there is too far, degrees.
+    object: Option<(Direction, f64)>,
     first_deg: f64,
     second_deg: f64,
     icrs: (f64, f64),
@@ -20,9 +26,9 @@ pub struct Sieve {
     useful: bool,
 }
 
-impl Sieve {
+impl<'a> Sieve<'a> {
     /// Prepares the look for a report.
-    pub fn new(case: &Case, _sisters: Option<&Sisters>) -> Sieve {
+    pub fn new(case: &Case<'a>, sisters: Option<&'a Sisters>) -> Sieve<'a> {
         let meant = case.meant;
         let read = meant.read;
         let equatorial = case.report.position.kind == PositionKind::Equatorial;
@@ -41,7 +47,17 @@ impl Sieve {
                 _ => None,
             })
             .collect();
+        let object = named(case.report, case.house)
+            .and_then(|known| known.expected(case))
+            .map(|e| {
+                let reach = e.radius_arcsec.max(120.0) + 2.0 * e.slack_arcsec + 600.0;
+                let step = meant.reduced.map_or(0.0, |r| 3.0 * r.step_arcsec);
+                (e.icrs, (reach + step) / 3600.0 + slack(on_icrs))
+            });
         Sieve {
+            case: *case,
+            sisters,
+            object,
             first_deg: read.map_or(0.0, |r| r.first_deg),
             second_deg: read.map_or(0.0, |r| r.second_deg),
             icrs: meant
@@ -80,6 +96,29 @@ impl Sieve {
             first.value() * scale - self.first_deg,
             second_deg - self.second_deg,
         );
+        let place = Direction {
+            ra_deg: (self.icrs.0 + d_first).rem_euclid(360.0),
+            dec_deg: (self.icrs.1 + d_second).clamp(-90.0, 90.0),
+        };
+        if self
+            .object
+            .is_some_and(|(at, reach)| separation_deg(place, at) > reach)
+        {
+            return false;
+        }
+        if let (Some(sisters), Some(mut reduced)) = (self.sisters, self.case.meant.reduced) {
+            (reduced.icrs_ra_deg, reduced.icrs_dec_deg) = (place.ra_deg, place.dec_deg);
+            let near = Meant {
+                reduced: Some(reduced),
+                instant: self.case.meant.instant,
+                ..Meant::default()
+            };
+            if let Some((false, arcsec)) = sisters.agrees(self.case.report, &near)
+                && arcsec > 600.0 + slack(self.on_icrs) * 3600.0
+            {
+                return false;
+            }
+        }
         if let Some(hour_angle) = self.hour_angle_deg {
             // precession turns the axes by less than a degree within a lifetime of the equinox: two degrees are lenient
             let (h, d, phi) = (
@@ -102,14 +141,15 @@ impl Sieve {
         }
         match self.constellation {
             Some(said) if self.on_icrs => {
-                let place = crate::sky::Direction {
-                    ra_deg: (self.icrs.0 + d_first).rem_euclid(360.0),
-                    dec_deg: (self.icrs.1 + d_second).clamp(-90.0, 90.0),
-                };
                 crate::sky::constellations::at(place) == said
                     || crate::sky::constellations::distance_deg(place, said) < 0.1
             }
             _ => true,
         }
     }
+}
+
+/// What the quick look may be off, degrees: precession turns a difference in another frame's coordinates.
+fn slack(on_icrs: bool) -> f64 {
+    if on_icrs { 0.0 } else { 3.0 }
 }
