@@ -84,6 +84,7 @@ struct Truth {
     utc: Option<String>,
     altitude_deg: Option<f64>,
     within_deg: Option<f64>,
+    slip: String,
 }
 
 #[test]
@@ -125,6 +126,11 @@ fn every_example_is_understood_and_only_the_planted_faults_are_found() {
         }
         if (record["verdict"] == "accept") != planted.is_empty() {
             wrong.push(format!("{name}: verdict {}", record["verdict"]));
+        }
+        // the slip that was made must be among those offered
+        let slips = record["slips"].as_array().unwrap();
+        if !truth.slip.is_empty() && slips.iter().all(|s| s["slip"] != truth.slip.as_str()) {
+            wrong.push(format!("{name}: {} is not offered", truth.slip));
         }
         if let (Some(ra), Some(dec), Some(within)) =
             (truth.ra_icrs_deg, truth.dec_icrs_deg, truth.within_arcsec)
