@@ -69,7 +69,7 @@ fn notation(p: &Position) -> bool {
     p.first.is_some_and(|a| a.parts().len() > 1)
 }
 
-fn apart_deg(a: &Position, b: &Position) -> Option<f64> {
+pub(super) fn apart_deg(a: &Position, b: &Position) -> Option<f64> {
     let degrees = |p: &Position| {
         let ra = p.first?;
         let ra = if p.first_unit == Some(AngleUnit::Degrees) {

@@ -293,7 +293,7 @@ pub(super) fn position(
 }
 
 /// The last numbers of a run that stands before a signed declination: a serial number or a day may lead it.
-pub(super) fn ra_before(run: &Run, dec_parts: Option<usize>) -> Option<Angle> {
+pub(super) fn ra_before(run: &Run, dec_parts: Option<usize>, named: bool) -> Option<Angle> {
     let n = run.numbers.len();
     let hour_ok = |i: usize| {
         run.numbers
@@ -303,7 +303,11 @@ pub(super) fn ra_before(run: &Run, dec_parts: Option<usize>) -> Option<Angle> {
     let from = match n {
         0 => return None,
         1..=2 => 0,
-        3 => usize::from(dec_parts == Some(2) && !hour_ok(0) && hour_ok(1)),
+        // "Suspect 5 18 12.2 -12 04": the number of a name, then hours and minutes
+        3 => {
+            let name_number = named && run.numbers[2].0.places > 0;
+            usize::from(dec_parts == Some(2) && hour_ok(1) && (!hour_ok(0) || name_number))
+        }
         _ => n - 3,
     };
     run.angle(from, n)

@@ -47,7 +47,11 @@ pub(super) struct Gathered {
 
 /// All positions of a block's atoms.
 pub fn positions(text: &str, atoms: &[Atom]) -> Vec<Found> {
-    let finder = Finder { text, atoms };
+    let mut finder = Finder {
+        text,
+        atoms,
+        last: None,
+    };
     let mut found: Vec<Found> = Vec::new();
     let mut i = 0;
     while i < atoms.len() {
@@ -56,6 +60,7 @@ pub fn positions(text: &str, atoms: &[Atom]) -> Vec<Found> {
             Some(mut f) => {
                 finder.tags_around(&mut f, from);
                 i = f.end.max(i + 1);
+                finder.last = Some(f.position.clone());
                 found.push(f);
             }
             None => i += 1,
@@ -67,6 +72,8 @@ pub fn positions(text: &str, atoms: &[Atom]) -> Vec<Found> {
 pub(super) struct Finder<'a, 't> {
     pub text: &'t str,
     pub atoms: &'a [Atom<'t>],
+    /// The position found last.
+    pub last: Option<Position>,
 }
 
 impl<'t> Finder<'_, 't> {
@@ -465,29 +472,48 @@ impl<'t> Finder<'_, 't> {
         }
         let padded = |a: &Angle| a.parts().iter().all(|p| p.number.whole_digits == 2);
         let colons = |a: &Angle| a.parts()[0].mark == Mark::Colon;
-        let strong = marked_ra && (dec_marked || dec.parts().len() > 1)
-            || colons(&ra) && ra.parts().len() == 3 && dec.sign.is_some() && dec.parts().len() > 1
-            || ra.parts().len() == 3
-                && padded(&ra)
-                && dec.sign.is_some()
-                && dec.parts().len() > 1
-                && padded(&dec)
-                && in_range(&ra, &dec);
-        let named = self.word_before(i)
-            || self.named_line(i)
-                && ra.parts().len() > 1
-                && padded(&ra)
+        // a lone number is a right ascension only where a word or a tag says so
+        let lone =
+            ra.parts().len() == 1 && ra.parts()[0].number.places == 0 && ra.marked_unit().is_none();
+        if lone && !self.word_before(i)
+            || ra.parts().len() > 1 && !dec_marked && dec.parts().len() == 1
+        {
+            return None;
+        }
+        // "12 13 -4 05 7 …": what follows the declination with a sign is the declination
+        if !dec_marked && self.signed_after(found.end) {
+            return None;
+        }
+        let led = self.word_before(i);
+        let row = self.named_line(i) && self.short_tail(found.end);
+        let strong = marked_ra && (dec.parts().len() > 1 && dec_marked || row && dec_marked || led)
+            || (led || row)
+                && (marked_ra && dec.parts().len() > 1
+                    || colons(&ra)
+                        && ra.parts().len() == 3
+                        && dec.sign.is_some()
+                        && dec.parts().len() > 1
+                    || ra.parts().len() == 3
+                        && padded(&ra)
+                        && dec.sign.is_some()
+                        && dec.parts().len() > 1
+                        && padded(&dec)
+                        && in_range(&ra, &dec));
+        let both_degrees = ra.marked_unit() == Some(AngleUnit::Degrees)
+            && dec.marked_unit() == Some(AngleUnit::Degrees)
+            && dec.sign.is_some();
+        let named = led
+            || row
+                && (ra.parts().len() > 1 && padded(&ra) || both_degrees)
                 && (dec.sign.is_some() || dec.compass.is_some());
         let pairs_well =
             ra.parts().len() > 1 && dec.parts().len() > 1 || dec.sign.is_some() || dec_marked;
-        if strong
+        let form = self.form_led(i, from)
+            && (self.says_form(i, from) || self.close_to_last(&found.position));
+        let taken = strong
             || tag && (pairs_well || ra.marked_unit().is_some())
-            || (named || self.form_led(i, from)) && pairs_well && in_range(&ra, &dec)
-        {
-            Some(found)
-        } else {
-            None
-        }
+            || (named || form) && pairs_well && in_range(&ra, &dec);
+        taken.then_some(found)
     }
 
     /// An RA at atom `i` and a declination right after it.
@@ -522,7 +548,7 @@ impl<'t> Finder<'_, 't> {
             _ => None,
         };
         let (ra, _) = match &self.atoms[i].kind {
-            Kind::Run(run) => (ra_before(run, dec_run)?, i + 1),
+            Kind::Run(run) => (ra_before(run, dec_run, self.name_right_before(i))?, i + 1),
             _ => self.angle_at(i, Axis::Ra, None)?,
         };
         let mut h = Gathered::default();
