@@ -24,6 +24,7 @@ const PLAIN: &[(&str, &str)] = &[
     ("ecliptic", "Ecliptic"),
     ("latitude", "Latitude"),
     ("longitude", "Longitude"),
+    ("geographic-pair", "GeographicPair"),
     ("elevation", "Elevation"),
     ("site", "Site"),
     ("observer", "Observer"),

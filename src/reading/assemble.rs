@@ -1,5 +1,6 @@
 //! Assembly: positions and statements become reports; each report takes what its own line says, then its block, then what stands.
 
+use super::head::Head;
 use super::names::new_word_in;
 use super::parts::{Part, Scene, parts};
 use super::position::positions;
@@ -25,7 +26,7 @@ pub fn read(sheet: &Sheet) -> Vec<Report> {
         untagged: Vec::new(),
     };
     let blocks = sheet.blocks();
-    let mut head: Option<table::Head> = None;
+    let mut head: Option<Head> = None;
     for block in blocks {
         reader.block(block, &mut head);
     }
@@ -55,15 +56,21 @@ pub(super) struct Reader<'t> {
 }
 
 impl<'t> Reader<'t> {
-    fn block(&mut self, block: Block, head: &mut Option<table::Head>) {
+    fn block(&mut self, block: Block, head: &mut Option<Head>) {
         // tables first: their rows are read by their heads
         let mut from = block.first;
         let mut prose: Vec<usize> = Vec::new();
         while from < block.end {
             if let Some(found) = table::head(self.sheet, from, block.end) {
+                let rows = table::rows(self.sheet, &found, block.end);
+                // a head without a row is prose, unless the rows follow a blank line
+                if rows.is_empty() && found.line + 1 < block.end {
+                    prose.push(from);
+                    from += 1;
+                    continue;
+                }
                 self.prose(&prose, block);
                 prose.clear();
-                let rows = table::rows(self.sheet, &found, block.end);
                 let next = rows
                     .iter()
                     .map(|r| r.line + 1)
@@ -105,9 +112,6 @@ impl<'t> Reader<'t> {
         let mut starts = Vec::with_capacity(last + 2 - first);
         for i in first..=last {
             starts.push(all.len());
-            if !lines.contains(&i) && lines.len() != last + 1 - first {
-                continue;
-            }
             let line = self.sheet.lines()[i];
             atoms(
                 Text::window(self.text, line.body),
@@ -136,6 +140,7 @@ impl<'t> Reader<'t> {
             starts,
         };
         let reports_before = self.reports.len();
+        let mut block_object = None;
         for part in parts(self, &scene) {
             // what stands above the first position of a part, in a list, stands for what follows
             if part.lead > part.from {
@@ -154,7 +159,10 @@ impl<'t> Reader<'t> {
                 .iter()
                 .map(|f| (f.first - part.lead, f.end - part.lead))
                 .collect();
-            let said = gather(self.text, &all[part.lead..part.to], &taken);
+            let mut said = gather(self.text, &all[part.lead..part.to], &taken);
+            if said.objects.is_empty() {
+                said.objects.extend(block_object.clone());
+            }
             self.note_year(&said.instants);
             let equatorial = inside
                 .iter()
@@ -199,7 +207,8 @@ impl<'t> Reader<'t> {
         let own = scene.span(own_from, own_to);
         let said = scope::own_words(scene, n, part, own, said, self);
         // a role is what the nearest words before the position on its line say, else the part's
-        let before = Span::new(own.start, scene.all[f.first].span.start.max(own.start));
+        let start = scope::sentence_start(scene, n).max(own.start);
+        let before = Span::new(start, scene.all[f.first].span.start.max(start));
         let role = said
             .roles
             .iter()
@@ -230,7 +239,7 @@ impl<'t> Reader<'t> {
 
     // ------------------------------------------------------------------------------------------ tables
 
-    fn table(&mut self, head: &table::Head, rows: &[Row], block: Block) {
+    fn table(&mut self, head: &Head, rows: &[Row], block: Block) {
         for row in rows {
             self.note_year(&row.said.instants);
             let draft = Draft {

@@ -23,9 +23,10 @@ impl Finder<'_, '_> {
                         .any(|w| p.means(*w)) =>
                 {
                     // "Sun" and "set" are other words too; a weekday or a verb blocks nothing
-                    return !p
+                    let other = p
                         .meanings()
                         .any(|w| matches!(w, Word::Weekday(_) | Word::Month(_)));
+                    return !other || self.atoms.get(k + 1).is_some_and(|a| a.is_mark(':'));
                 }
                 // coordinates of a site
                 Kind::Word(p)
@@ -172,6 +173,8 @@ impl Finder<'_, '_> {
                 | Kind::Run(_)
                 | Kind::Instant(_)
                 | Kind::Equinox(_) => {}
+                // a clock time at the head of a row
+                Kind::Angle(a) if a.sign.is_none() && a.parts().len() <= 3 && words == 0 => {}
                 _ => return false,
             }
         }

@@ -11,6 +11,7 @@ pub mod equinox;
 mod evidence;
 mod fold;
 mod forms;
+mod head;
 pub mod instant;
 pub mod marks;
 mod names;

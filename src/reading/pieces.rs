@@ -11,14 +11,20 @@ impl Finder<'_, '_> {
     /// The next atom that holds a number, over what may stand between a label and its value.
     pub(super) fn to_number(&self, from: usize, g: &mut Gathered, lines: bool) -> Option<usize> {
         let mut line_ends = 0;
-        for i in from..self.atoms.len().min(from + 14) {
+        let mut i = from;
+        while i < self.atoms.len().min(from + 18) {
             let atom = &self.atoms[i];
+            if let Some((after, unit)) = self.form_bracket(i) {
+                g.unit = unit.or(g.unit);
+                i = after;
+                continue;
+            }
             match &atom.kind {
                 Kind::Angle(_) | Kind::Run(_) | Kind::Joined(_) => return Some(i),
                 Kind::Equinox(t) => g.tags.push(Spanned::new(*t, atom.span)),
                 Kind::Uncertainty(_) => {}
                 Kind::LineEnd if lines && line_ends == 0 => line_ends += 1,
-                Kind::Mark(c) if "=:,;/|()[]{}~.-–&≈<>*_`\"".contains(*c) => {}
+                Kind::Mark(c) if "=:,;/|()[]{}~.-–&≈<>*_`$\\\"".contains(*c) => {}
                 Kind::Word(p) => {
                     if p.means(Word::Degrees) {
                         g.unit = Some(AngleUnit::Degrees);
@@ -47,6 +53,32 @@ impl Finder<'_, '_> {
                         g.unit = Some(AngleUnit::Hours);
                     } else {
                         return None;
+                    }
+                }
+                _ => return None,
+            }
+            i += 1;
+        }
+        None
+    }
+
+    /// `(h m s)`, `(hh:mm:ss)`, `(deg)`: how a number is written, in brackets after its label; the atom after it, and the unit it names.
+    fn form_bracket(&self, i: usize) -> Option<(usize, Option<AngleUnit>)> {
+        if !self.atoms[i].is_mark('(') && !self.atoms[i].is_mark('[') {
+            return None;
+        }
+        let mut unit = None;
+        for k in i + 1..self.atoms.len().min(i + 9) {
+            let atom = &self.atoms[k];
+            let words = atom.span.of(self.text);
+            match &atom.kind {
+                Kind::Mark(')' | ']') => return (k > i + 1).then_some((k + 1, unit)),
+                Kind::Mark('°') => unit = unit.or(Some(AngleUnit::Degrees)),
+                Kind::Word(p) if p.means(Word::Degrees) => unit = unit.or(Some(AngleUnit::Degrees)),
+                Kind::Word(p) if p.means(Word::Hours) => unit = unit.or(Some(AngleUnit::Hours)),
+                Kind::Mark(_) | Kind::Word(_) | Kind::Plain if words.len() <= 4 => {
+                    if matches!(words, "h" | "hh") {
+                        unit = unit.or(Some(AngleUnit::Hours));
                     }
                 }
                 _ => return None,
@@ -150,6 +182,18 @@ impl Finder<'_, '_> {
             }
             _ => None,
         }
+    }
+
+    /// A label of a declination not far ahead, with no other right ascension before it.
+    pub(super) fn dec_label_ahead(&self, from: usize) -> bool {
+        for i in from..self.atoms.len().min(from + 40) {
+            match self.axis(i) {
+                Some(Axis::Dec | Axis::PolarDistance) => return true,
+                Some(Axis::Ra) => return false,
+                _ => {}
+            }
+        }
+        false
     }
 
     /// Hours or degrees, by its own marks, its notation, or a word beside it.

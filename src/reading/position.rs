@@ -95,7 +95,7 @@ impl<'t> Finder<'_, 't> {
             Axis::Azimuth
         } else if is(Word::ZenithDistance) {
             Axis::ZenithDistance
-        } else if is(Word::Altitude) {
+        } else if is(Word::Altitude) || is(Word::Elevation) {
             Axis::Altitude
         } else {
             return None;
@@ -165,8 +165,8 @@ impl<'t> Finder<'_, 't> {
         let unit = self.unit_of(&ra, g.unit.or_else(|| self.unit_after(used)));
         next = used;
         let mut other_ra: Option<(Angle, Option<AngleUnit>)> = None;
-        let mut bracket = false;
         // on the way to the declination: tags, uncertainties, another form of the RA
+        let mut forms_passed = 0;
         let dec = loop {
             let Some(atom) = self.atoms.get(next) else {
                 break None;
@@ -183,7 +183,7 @@ impl<'t> Finder<'_, 't> {
                 | Kind::Mark(
                     ',' | ';' | '/' | '|' | '&' | ':' | ')' | ']' | '}' | '~' | '·' | '-' | '–',
                 ) => {}
-                Kind::Mark('(' | '[' | '{') => bracket = true,
+                Kind::Mark('(' | '[' | '{') => {}
                 Kind::Mark('=' | '≈') => {}
                 Kind::Word(_)
                     if self
@@ -217,7 +217,24 @@ impl<'t> Finder<'_, 't> {
                 Kind::Angle(_) | Kind::Run(_) | Kind::Joined(_) => {
                     // directly after the RA: the declination, or the RA once more in another form
                     let (candidate, after) = self.angle_at(next, Axis::Dec, Some(&ra))?;
-                    let again = self.between_is(used, next, &['=', '('])
+                    // hours are no declination: another form, or the RA of another equinox; its declination has a label of its own
+                    let again_on_lines = candidate.sign.is_none()
+                        && self.atoms[used..next]
+                            .iter()
+                            .any(|a| matches!(a.kind, Kind::LineEnd))
+                        && self.dec_label_ahead(after);
+                    if candidate.marked_unit() == Some(AngleUnit::Hours)
+                        && self.dec_label_ahead(after)
+                        || again_on_lines
+                    {
+                        forms_passed += 1;
+                        next = after;
+                        continue;
+                    }
+                    if candidate.marked_unit() == Some(AngleUnit::Hours) {
+                        break None;
+                    }
+                    let again = self.between_is(used, next, &['=', '(', '[', '{'])
                         && self.same_kind_of_ra(&ra, unit, &candidate);
                     if again
                         && other_ra.is_none()
@@ -251,11 +268,10 @@ impl<'t> Finder<'_, 't> {
                 .iter()
                 .filter(|a| matches!(a.kind, Kind::LineEnd))
                 .count();
-            if lines > 2 || next > used + 14 {
+            if lines > 2 + forms_passed || next > used + 14 + 12 * forms_passed {
                 break None;
             }
         };
-        let _ = bracket;
         let kind = if axis == Axis::HourAngle {
             PositionKind::HourAngle
         } else {
@@ -401,6 +417,30 @@ impl<'t> Finder<'_, 't> {
         let Some((which, two, end)) = other else {
             return None;
         };
+        let (mut one, mut two, mut end) = (one, two, end);
+        let mut from_south = false;
+        // "S 35° W": counted from the south through west; other quarters are not settled here
+        let azimuth_here = if axis == Axis::Azimuth {
+            &mut one
+        } else {
+            &mut two
+        };
+        if let Some(point) = azimuth_here.compass {
+            let after = self.atoms.get(end).and_then(|a| match &a.kind {
+                Kind::Word(p) => p.meanings().find_map(|w| match w {
+                    Word::Compass(c) => Some(c),
+                    _ => None,
+                }),
+                _ => None,
+            });
+            match (point.value, after) {
+                (Compass::South, Some(Compass::West)) => from_south = true,
+                (Compass::North, Some(Compass::East)) => {}
+                _ => return None,
+            }
+            azimuth_here.compass = None;
+            end += 1;
+        }
         let (azimuth, altitude, zenith) = if axis == Axis::Azimuth {
             (one, two, which == Axis::ZenithDistance)
         } else {
@@ -413,6 +453,7 @@ impl<'t> Finder<'_, 't> {
             Some(AngleUnit::Degrees),
         );
         p.zenith_distance = zenith;
+        p.azimuth_from_south = from_south;
         p.labelled = true;
         let mut last = end;
         for (k, atom) in self.atoms.iter().enumerate().skip(end).take(6) {
@@ -505,7 +546,8 @@ impl<'t> Finder<'_, 't> {
         let named = led
             || row
                 && (ra.parts().len() > 1 && padded(&ra) || both_degrees)
-                && (dec.sign.is_some() || dec.compass.is_some());
+                && (dec.sign.is_some() || dec.compass.is_some())
+                && (dec.parts().len() > 1 || dec.marked_unit().is_some());
         let pairs_well =
             ra.parts().len() > 1 && dec.parts().len() > 1 || dec.sign.is_some() || dec_marked;
         let form = self.form_led(i, from)

@@ -158,6 +158,18 @@ fn nearest(
     chosen.into_iter().chain(elsewhere()).collect()
 }
 
+/// Where the sentence of position `n` begins.
+pub(super) fn sentence_start(scene: &Scene, n: usize) -> usize {
+    let f = &scene.found[n];
+    let (first, last) = scene.lines_of(f);
+    let here = scene.all[f.first].span.start;
+    sentences(scene, first, last)
+        .ends
+        .into_iter()
+        .rfind(|e| *e <= here)
+        .unwrap_or(0)
+}
+
 /// Where the sentences of some lines end.
 struct Sentences {
     ends: Vec<usize>,

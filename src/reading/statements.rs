@@ -103,9 +103,31 @@ impl<'t> Gatherer<'_, 't> {
                     site.elevation_m = Some(*metres);
                 }
             }
+            // "Positions for 1950.0:"
+            Kind::Run(r)
+                if r.numbers.len() == 1
+                    && r.numbers[0].0.places == 1
+                    && self.heads_positions(i) =>
+            {
+                if let Ok((rest, t)) = super::equinox::equinox_year(Text::window(self.text, r.span))
+                    && rest.is_empty()
+                {
+                    self.out
+                        .tags
+                        .push(Spanned::new(Tagged { weak: false, ..t }, r.span));
+                }
+            }
             Kind::Angle(a) if a.parts()[0].mark == Mark::Colon && a.sign.is_none() => {
                 // "Time: 22:31", "at 22:31:05": a clock time without a zone
-                let led = i > 0 && (self.led_by(i, Word::Time) || self.led_by(i, Word::Date));
+                // or at the head of a row
+                let heads = i == 0 || matches!(self.atoms[i - 1].kind, Kind::LineEnd);
+                let led = heads
+                    && a.parts().len() <= 3
+                    && self
+                        .taken
+                        .iter()
+                        .any(|(from, _)| *from > i && *from <= i + 3)
+                    || i > 0 && (self.led_by(i, Word::Time) || self.led_by(i, Word::Date));
                 if led
                     && let Ok((_, clock)) = super::instant::clock(Text::window(
                         self.text,
@@ -142,7 +164,7 @@ impl<'t> Gatherer<'_, 't> {
     fn word(&mut self, i: usize, meanings: &[Word]) -> usize {
         let atom = &self.atoms[i];
         let is = |w: Word| meanings.contains(&w);
-        if is(Word::All) {
+        if is(Word::All) || is(Word::Position) {
             self.out.all = true;
         }
         if is(Word::Night) || is(Word::Date) {
@@ -228,7 +250,7 @@ impl<'t> Gatherer<'_, 't> {
                     {
                         k += 1
                     }
-                    Kind::Plain if matches!(a.span.of(self.text), "in" | "en" | "im") => k += 1,
+                    Kind::Plain if k <= i + 3 => k += 1,
                     _ => break,
                 }
                 if k > i + 5 {
@@ -263,6 +285,9 @@ impl<'t> Gatherer<'_, 't> {
         ] {
             if is(word)
                 && !self.led_by(i, Word::NotAPosition)
+                && !(quantity == HorizonQuantity::Airmass
+                    && atom.span.len() == 1
+                    && !self.label_mark(i))
                 && let Some((angle, next)) = self.value(i + 1)
             {
                 let single = atom.span.len() <= 2;
@@ -576,6 +601,21 @@ impl<'t> Gatherer<'_, 't> {
             }
         }
         false
+    }
+
+    /// A line that speaks of positions, or one closed by a colon, and holds none.
+    fn heads_positions(&self, i: usize) -> bool {
+        let line = self.atoms[i].line;
+        let of_line: Vec<&Atom> = self
+            .atoms
+            .iter()
+            .filter(|a| a.line == line && !matches!(a.kind, Kind::LineEnd))
+            .collect();
+        let colon = of_line.last().is_some_and(|a| a.is_mark(':'));
+        let speaks = of_line.iter().any(|a| a.means(Word::Position));
+        (colon || speaks)
+            && of_line.len() <= 12
+            && !of_line.iter().any(|a| matches!(a.kind, Kind::Instant(_)))
     }
 
     fn bracketed(&self, i: usize) -> bool {
