@@ -149,10 +149,9 @@ impl<'t> Reader<'t> {
                     .iter()
                     .filter(|a| matches!(a.kind, Kind::LineEnd))
                     .count();
-                self.stands(
-                    gather(self.text, lead, &[]),
-                    if lead.len() <= 8 * count { 1 } else { count },
-                );
+                let said = gather(self.text, lead, &[]);
+                block_object = said.objects.last().cloned().or(block_object);
+                self.stands(said, if lead.len() <= 8 * count { 1 } else { count });
             }
             let inside = &found[part.positions.clone()];
             let taken: Vec<(usize, usize)> = inside

@@ -3,9 +3,12 @@
 use super::position::{Axis, Finder, Gathered};
 use super::run::Run;
 use super::scan::Kind;
+use super::text::Text;
 use super::words::Word;
 use crate::report::{Angle, AngleUnit, Compass, Mark, Position, PositionKind};
 use crate::span::{Span, Spanned};
+use nom::Parser;
+use nom::branch::alt;
 
 impl Finder<'_, '_> {
     /// The next atom that holds a number, over what may stand between a label and its value.
@@ -182,6 +185,52 @@ impl Finder<'_, '_> {
             }
             _ => None,
         }
+    }
+
+    /// A number broken over a line: the declination ends its line with fewer parts than the right ascension, and the next line
+    /// begins with the digits that are missing. The whole angle, and the atom after it.
+    pub(super) fn rejoined(
+        &self,
+        angle: &Angle,
+        end: usize,
+        parts: usize,
+    ) -> Option<(Angle, usize)> {
+        let next = self.atoms.get(end + 1)?;
+        let broken =
+            angle.parts().len() < parts && matches!(self.atoms.get(end)?.kind, Kind::LineEnd);
+        let last = angle.parts().last()?;
+        if !broken
+            || last.number.places > 0
+            || !next
+                .span
+                .of(self.text)
+                .starts_with(|c: char| c.is_ascii_digit())
+        {
+            return None;
+        }
+        let line_end = self.atoms[end + 1..]
+            .iter()
+            .find(|a| matches!(a.kind, Kind::LineEnd))
+            .map_or(self.text.len(), |a| a.span.start);
+        let head = angle.span.of(self.text);
+        let joined = format!("{head} {}", self.text.get(next.span.start..line_end)?);
+        let (rest, whole) = alt((super::angle::angle, super::angle::angle_blanks))
+            .parse(Text::new(&joined))
+            .ok()?;
+        let cut = head.len() + 1;
+        if whole.parts().len() != parts
+            || rest.at() <= cut
+            || whole.parts()[angle.parts().len()].number.whole_digits != 2
+        {
+            return None;
+        }
+        let (start, shift) = (angle.span.start, next.span.start);
+        let whole = whole.moved(|o| if o < cut { start + o } else { shift + o - cut });
+        let after = self
+            .atoms
+            .iter()
+            .position(|a| a.span.start >= whole.span.end && a.span.start >= shift)?;
+        Some((whole, after))
     }
 
     /// A label of a declination not far ahead, with no other right ascension before it.

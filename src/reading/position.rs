@@ -217,6 +217,17 @@ impl<'t> Finder<'_, 't> {
                 Kind::Angle(_) | Kind::Run(_) | Kind::Joined(_) => {
                     // directly after the RA: the declination, or the RA once more in another form
                     let (candidate, after) = self.angle_at(next, Axis::Dec, Some(&ra))?;
+                    // in a bracket, with the declination's own label ahead: an error, or another form
+                    let bracketed = self.between_is(used, next, &['(', '[', '{'])
+                        && !self.between_is(used, next, &['=']);
+                    if bracketed
+                        && self.dec_label_ahead(after)
+                        && !self.same_kind_of_ra(&ra, unit, &candidate)
+                    {
+                        forms_passed += 1;
+                        next = after;
+                        continue;
+                    }
                     // hours are no declination: another form, or the RA of another equinox; its declination has a label of its own
                     let again_on_lines = candidate.sign.is_none()
                         && self.atoms[used..next]
@@ -280,6 +291,9 @@ impl<'t> Finder<'_, 't> {
         let sexagesimal_ra = ra.parts().len() > 1 || ra.marked_unit() == Some(AngleUnit::Hours);
         match dec {
             Some((mut dec, mut end, polar_distance)) => {
+                if let Some((whole, after)) = self.rejoined(&dec, end, ra.parts().len()) {
+                    (dec, end) = (whole, after);
+                }
                 if let Some(c) = self.compass_atom(end, &dec) {
                     dec.compass = Some(c);
                     dec.span.end = c.span.end;
@@ -598,6 +612,9 @@ impl<'t> Finder<'_, 't> {
         let (mut dec, mut end) = self.angle_at(next_dec, Axis::Dec, Some(&ra))?;
         if dec.marked_unit() == Some(AngleUnit::Hours) {
             return None;
+        }
+        if let Some((whole, after)) = self.rejoined(&dec, end, ra.parts().len()) {
+            (dec, end) = (whole, after);
         }
         if let Some(c) = self.compass_atom(end, &dec) {
             dec.compass = Some(c);

@@ -181,6 +181,8 @@ fn atom<'a>(rest: Text<'a>, c: char, after_label: bool, awaiting: bool) -> (Text
         && let Ok((r, i)) = instant(rest)
         // "RA 9.5958 Dec +33": no ninth of December
         && !(awaiting && yearless(&i))
+        // "RA/Dec: 08:18.5 +07:30": no clock with its offset
+        && !(after_label && i.date.is_none())
     {
         return (r, Kind::Instant(Box::new(i)));
     }
