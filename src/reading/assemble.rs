@@ -12,6 +12,7 @@ use super::statements::{Statements, gather};
 use super::table;
 use super::text::Text;
 use super::words::Word;
+use super::wrap::logical_lines;
 use crate::report::{Nearness, PositionKind, Report, Role};
 use crate::sheet::{Block, Sheet};
 use crate::span::Span;
@@ -109,24 +110,17 @@ impl<'t> Reader<'t> {
         };
         let mut all: Vec<Atom<'t>> = Vec::new();
         let mut awaiting = false;
-        let mut starts = Vec::with_capacity(last + 2 - first);
-        for i in first..=last {
-            starts.push(all.len());
-            let line = self.sheet.lines()[i];
-            atoms(
-                Text::window(self.text, line.body),
-                i,
-                &mut awaiting,
-                &mut all,
-            );
-            let end = line.whole.end;
+        for (i, words) in logical_lines(self.sheet, lines) {
+            atoms(Text::window(self.text, words), i, &mut awaiting, &mut all);
             all.push(Atom {
                 kind: Kind::LineEnd,
-                span: Span::new(end, end),
+                span: Span::new(words.end, words.end),
                 line: i,
             });
         }
-        starts.push(all.len());
+        let starts = (first..=last + 1)
+            .map(|line| all.partition_point(|a| a.line < line))
+            .collect();
         let found = positions(self.text, &all);
         if found.is_empty() {
             let said = gather(self.text, &all, &[]);

@@ -31,5 +31,6 @@ mod table;
 pub mod text;
 pub mod uncertainty;
 pub mod words;
+mod wrap;
 
 pub use assemble::read;
