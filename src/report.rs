@@ -434,6 +434,18 @@ pub struct InstantWritten {
     pub span: Span,
 }
 
+impl InstantWritten {
+    /// True where it tells more than a day: a clock time, or decimals of the day or of a Julian date.
+    pub fn clock_or_decimals(&self) -> bool {
+        self.clock.is_some()
+            || match self.date.map(|d| d.value) {
+                Some(DateWritten::Calendar { day, .. }) => day.places > 0,
+                Some(DateWritten::Julian { .. }) => true,
+                None => false,
+            }
+    }
+}
+
 /// A site as written: a name, coordinates, or both.
 #[derive(Clone, PartialEq, Debug, Default)]
 pub struct SiteWritten {

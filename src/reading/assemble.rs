@@ -11,7 +11,6 @@ use super::standing::{Draft, Standing};
 use super::statements::{Statements, gather};
 use super::table;
 use super::text::Text;
-use super::words::Word;
 use super::wrap::logical_lines;
 use crate::report::{Nearness, PositionKind, Report, Role};
 use crate::sheet::{Block, Sheet};
@@ -171,23 +170,20 @@ impl<'t> Reader<'t> {
         self.shared_tag(reports_before);
     }
 
-    /// "(all J2000)", "both J2000" at the end of a list: the only tag of a block holds for all of it.
+    /// A tag said once in a block holds for all of it, where no other is said there.
     fn shared_tag(&mut self, from: usize) {
-        let tagged: Vec<_> = self.reports[from..]
+        let mut tags = self.reports[from..]
             .iter()
-            .filter_map(|r| r.equinoxes.first().copied())
-            .collect();
-        let [(tag, _)] = tagged[..] else { return };
-        let before = &self.text[tag.span.start.saturating_sub(24)..tag.span.start];
-        let says_all = before
-            .split(|c: char| !c.is_alphabetic())
-            .filter(|w| !w.is_empty())
-            .any(|w| super::words::says(Text::new(w), Word::All).is_some_and(Text::is_empty));
-        if says_all {
-            for r in &mut self.reports[from..] {
-                if r.equinoxes.is_empty() {
-                    r.equinoxes.push((tag, Nearness::Block));
-                }
+            .flat_map(|r| &r.equinoxes)
+            .filter(|(_, n)| matches!(n, Nearness::Own | Nearness::Block))
+            .map(|(t, _)| *t);
+        let Some(tag) = tags.next() else { return };
+        if tags.any(|t| t.value != tag.value) {
+            return;
+        }
+        for r in &mut self.reports[from..] {
+            if r.equinoxes.iter().all(|(_, n)| *n == Nearness::Standing) {
+                r.equinoxes = vec![(tag, Nearness::Block)];
             }
         }
     }

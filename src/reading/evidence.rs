@@ -161,9 +161,9 @@ impl Finder<'_, '_> {
     }
 
     /// First on its line, or after a name and perhaps a colon or a date: the row of a list.
-    pub(super) fn named_line(&self, i: usize) -> bool {
+    pub(super) fn named_line(&self, i: usize, from: usize) -> bool {
         let mut words = 0;
-        for k in (0..i).rev() {
+        for k in (from..i).rev() {
             match &self.atoms[k].kind {
                 Kind::LineEnd => break,
                 Kind::Plain | Kind::Word(_) => words += 1,

@@ -126,6 +126,7 @@ impl Head {
         let mut unit = None;
         let mut tag_here = None;
         let mut clock_word = false;
+        let mut labels = 0;
         let mut compass = None;
         let mut base = None;
         let mut year = None;
@@ -135,8 +136,14 @@ impl Head {
                 Kind::Word(p) => {
                     for w in p.meanings() {
                         match w {
-                            Word::RightAscension => set(Column::Ra, 9),
-                            Word::Declination => set(Column::Dec, 9),
+                            Word::RightAscension => {
+                                labels |= 1;
+                                set(Column::Ra, 9);
+                            }
+                            Word::Declination => {
+                                labels |= 2;
+                                set(Column::Dec, 9);
+                            }
                             Word::Both => set(Column::Both, 10),
                             Word::Position => set(Column::Both, 4),
                             Word::HourAngle => set(Column::HourAngle, 8),
@@ -148,7 +155,7 @@ impl Head {
                             Word::Altitude => set(Column::Altitude, 6),
                             Word::Object => set(Column::Object, 5),
                             Word::Observer => set(Column::Observer, 6),
-                            Word::Date => set(Column::Date, 6),
+                            Word::Date => set(Column::Date, 7),
                             Word::Time => {
                                 set(Column::Clock, 5);
                                 clock_word = true;
@@ -233,6 +240,10 @@ impl Head {
                 Kind::Mark('°') => unit = Some(AngleUnit::Degrees),
                 _ => {}
             }
+        }
+        // "R.A. (2000) Decl." over two columns
+        if labels == 3 {
+            column = Column::Both;
         }
         if matches!(
             column,

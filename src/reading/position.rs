@@ -161,7 +161,13 @@ impl<'t> Finder<'_, 't> {
             .of(self.text)
             .eq_ignore_ascii_case("alpha");
         // one run may hold both: "RA 13 08 52 22 14 39" is unlabelled in the middle
-        let (ra, used) = self.angle_at(at, Axis::Ra, None)?;
+        let (mut ra, mut used) = self.angle_at(at, Axis::Ra, None)?;
+        if let Some((whole, after)) = self
+            .rejoined(&ra, used, 3)
+            .or_else(|| self.rejoined(&ra, used, 2))
+        {
+            (ra, used) = (whole, after);
+        }
         let unit = self.unit_of(&ra, g.unit.or_else(|| self.unit_after(used)));
         next = used;
         let mut other_ra: Option<(Angle, Option<AngleUnit>)> = None;
@@ -504,7 +510,8 @@ impl<'t> Finder<'_, 't> {
             return None;
         }
         let mut g = Gathered::default();
-        let found = self.pair(i, &mut g, false, None)?;
+        let over_lines = self.word_before(i);
+        let found = self.pair(i, &mut g, over_lines, None)?;
         let p = &found.position;
         let (ra, dec) = (p.first?, p.second?);
         let tag = !found.tags.is_empty()
@@ -540,7 +547,7 @@ impl<'t> Finder<'_, 't> {
             return None;
         }
         let led = self.word_before(i);
-        let row = self.named_line(i) && self.short_tail(found.end);
+        let row = self.named_line(i, from) && self.short_tail(found.end);
         let strong = marked_ra && (dec.parts().len() > 1 && dec_marked || row && dec_marked || led)
             || (led || row)
                 && (marked_ra && dec.parts().len() > 1

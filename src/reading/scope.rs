@@ -4,7 +4,7 @@ use super::assemble::Reader;
 use super::parts::{Part, Scene};
 use super::scan::Kind;
 use super::statements::Statements;
-use crate::report::{HorizonQuantity, PositionKind, StatedHorizon};
+use crate::report::{DateWritten, HorizonQuantity, InstantWritten, PositionKind, StatedHorizon};
 use crate::span::Span;
 
 /// What is said of position `n`: its part's words without those of its neighbours.
@@ -47,6 +47,29 @@ pub(super) fn own_words(
         reader.standing.date.is_some(),
     );
     mine.instants.retain(|i| keep.contains(&i.span));
+    // of several full dates in its sentence, the one nearest to the position counts; a Julian date beside it is checked against it
+    let full = |i: &InstantWritten| {
+        own.contains(i.span)
+            && matches!(i.date.map(|d| d.value), Some(DateWritten::Calendar { .. }))
+            && i.clock_or_decimals()
+    };
+    if sharing.len() == 1 && mine.instants.iter().filter(|i| full(i)).count() > 1 {
+        let distance = |s: Span| {
+            if s.start >= here.end {
+                s.start - here.end
+            } else {
+                here.start.saturating_sub(s.end)
+            }
+        };
+        let nearest = mine
+            .instants
+            .iter()
+            .filter(|i| full(i))
+            .map(|i| distance(i.span))
+            .min();
+        mine.instants
+            .retain(|i| !full(i) || Some(distance(i.span)) == nearest);
+    }
     // a clock time alone takes the last date before it
     for i in &mut mine.instants {
         if i.date.is_none() {

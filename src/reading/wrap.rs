@@ -56,12 +56,14 @@ fn wrapped(sheet: &Sheet, line: usize, next: usize, width: usize) -> bool {
             && head.split_whitespace().count() <= 2
             && !head.contains(|c: char| c.is_ascii_digit())
     });
-    let bullet = after.starts_with(['-', '*', '•', '#', '[', '+']) && after[1..].starts_with(' ');
+    let bullet = first.chars().count() == 1 && first.starts_with(['-', '*', '•', '#', '[', '+']);
     let numbered = first.len() <= 4
         && first.ends_with(['.', ')'])
         && first.starts_with(|c: char| c.is_ascii_digit())
         && spoken(words) < 6;
-    if spoken(words) < 5 || labelled || bullet || numbered {
+    // a bracket left open is closed on the next line
+    let open = words.rfind('(').is_some_and(|o| !words[o..].contains(')')) && after.contains(')');
+    if spoken(words) < 5 && !(open && spoken(words) > 1) || labelled || bullet || numbered {
         return false;
     }
     // what ends a thought needs no joining, but "Mar." and "R.A." end none
