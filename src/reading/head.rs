@@ -305,7 +305,18 @@ fn shared_column(text: &str, cell: Span) -> Option<ColumnHead> {
     };
     if matches!(
         &*words,
-        "sign" | "decsign" | "de-" | "±" | "+/-" | "n/s" | "ns" | "decns" | "signdec" | "decl+/-"
+        "sign"
+            | "decsign"
+            | "de-"
+            | "±"
+            | "+/-"
+            | "n/s"
+            | "ns"
+            | "decns"
+            | "e/w"
+            | "ew"
+            | "signdec"
+            | "decl+/-"
     ) {
         return head(Column::Sign, None);
     }

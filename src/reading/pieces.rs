@@ -187,6 +187,32 @@ impl Finder<'_, '_> {
         }
     }
 
+    /// The number goes on after a mark that is none of an angle's (`-24*18'33\"`), or a sign stands where none is read (`(-)24`, `24-`):
+    /// what was read is not what was written.
+    pub(super) fn cut(&self, angle: &Angle) -> bool {
+        let after = self.text.get(angle.span.end..).unwrap_or("");
+        let mut next = after.chars();
+        let mark = next.next();
+        let strange = mark.is_some_and(|c| {
+            matches!(
+                c,
+                '*' | '^' | '\\' | '$' | '∘' | '~' | '_' | '#' | '@' | '%' | '&' | '<' | '¡' | '¢'
+            )
+        });
+        let digit_near = after
+            .chars()
+            .take(12)
+            .take_while(|c| !c.is_whitespace())
+            .any(|c| c.is_ascii_digit());
+        let trailing = mark.is_some_and(super::number::is_dash)
+            && angle.sign.is_none()
+            && next
+                .next()
+                .is_none_or(|c| c.is_whitespace() || matches!(c, ',' | ';' | ')'));
+        let before = self.text.get(..angle.span.start).unwrap_or("");
+        strange && digit_near || trailing || before.ends_with("(-)") || before.ends_with("(−)")
+    }
+
     /// A number broken over a line: the declination ends its line with fewer parts than the right ascension, and the next line
     /// begins with the digits that are missing. The whole angle, and the atom after it.
     pub(super) fn rejoined(

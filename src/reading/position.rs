@@ -314,7 +314,8 @@ impl<'t> Finder<'_, 't> {
                         end = after;
                     }
                 }
-                let mut p = position(kind, Some(ra), Some(dec), unit);
+                let whole = !self.cut(&dec);
+                let mut p = position(kind, Some(ra), whole.then_some(dec), unit);
                 p.polar_distance = polar_distance;
                 p.labelled = true;
                 if self.blocked(i) && !(sexagesimal(&p) || !g.tags.is_empty())
@@ -635,6 +636,9 @@ impl<'t> Finder<'_, 't> {
                 .or_else(|| if labelled { self.unit_after(end) } else { None }),
         );
         let p = position(PositionKind::Equatorial, Some(ra), Some(dec), unit);
+        if self.cut(&dec) && !labelled {
+            return None;
+        }
         let mut tags = std::mem::take(&mut g.tags);
         tags.extend(self.tag_in_run(next_dec, &dec));
         if self.small_unit_after(end, &dec) {

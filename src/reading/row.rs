@@ -12,8 +12,8 @@ use super::table::{Layout, by_column, cells};
 use super::text::Text;
 use super::words::{Word, word};
 use crate::report::{
-    Angle, AngleUnit, Clock, DateWritten, HorizonQuantity, InstantWritten, Mark, Number, Part,
-    Position, PositionKind, Sign, SiteWritten, StatedHorizon, Zone,
+    Angle, AngleUnit, Clock, Compass, DateWritten, HorizonQuantity, InstantWritten, Mark, Number,
+    Part, Position, PositionKind, Sign, SiteWritten, StatedHorizon, Zone,
 };
 use crate::sheet::Sheet;
 use crate::span::{Span, Spanned};
@@ -90,6 +90,8 @@ struct Cells {
     /// Coordinates in columns of their own for degrees, minutes and seconds: of RA, Dec, latitude, longitude.
     split: [Vec<(char, Number, Option<Sign>, Span)>; 4],
     sign: Option<Spanned<Sign>>,
+    /// The column before.
+    after: Option<Column>,
     /// A cell for the time holds something else.
     unread_time: bool,
     day_only: Option<(Number, Span)>,
@@ -130,12 +132,32 @@ impl Cells {
     fn cell(&mut self, text: &str, head: &Head, line: usize, column: ColumnHead, cell: Span) {
         let words = cell.of(text);
         let input = Text::window(text, cell);
+        if column.column != Column::Sign {
+            self.after = Some(column.column);
+        }
         if let Some(part) = column.part {
             self.split_cell(input, column.column, part);
             return;
         }
         match column.column {
             Column::Sign => {
+                let point = match words {
+                    "N" | "n" => Some(Compass::North),
+                    "S" | "s" => Some(Compass::South),
+                    "E" | "e" => Some(Compass::East),
+                    "W" | "w" => Some(Compass::West),
+                    _ => None,
+                };
+                // beside a latitude or longitude it is theirs
+                let of_site = match self.after {
+                    Some(Column::Latitude) => self.site.latitude.as_mut(),
+                    Some(Column::Longitude) => self.site.longitude.as_mut(),
+                    _ => None,
+                };
+                if let (Some(point), Some(angle)) = (point, of_site) {
+                    angle.compass = Some(Spanned::new(point, cell));
+                    return;
+                }
                 let sign = match words {
                     "-" | "−" | "–" | "S" | "s" => Some(Sign::Minus),
                     "+" | "N" | "n" => Some(Sign::Plus),
@@ -154,7 +176,7 @@ impl Cells {
                 None => self.unread = Some(cell),
             },
             Column::Dec => match coordinate(input, true) {
-                Some(a) => self.dec.push((a, column)),
+                Some(a) => self.dec.push((toward(a, column), column)),
                 None => self.unread = Some(cell),
             },
             Column::HourAngle => self.hour_angle = coordinate(input, true),

@@ -239,6 +239,40 @@ impl<'t> Gatherer<'_, 't> {
                     .unwrap_or(self.atoms.len());
             }
         }
+        // latitude and longitude on lines of their own
+        if (is(Word::Latitude) || is(Word::Longitude))
+            && self.label_mark(i)
+            && let Some((angle, next)) = self.value(i + 1)
+        {
+            let latitude = is(Word::Latitude) && !is(Word::Longitude);
+            match self.out.sites.last_mut() {
+                Some(s)
+                    if latitude
+                        && s.latitude.is_none()
+                        && (s.name.is_some() || s.longitude.is_some()) =>
+                {
+                    s.latitude = Some(angle);
+                    s.span = s.span.cover(angle.span);
+                }
+                Some(s) if !latitude && s.longitude.is_none() => {
+                    s.longitude = Some(angle);
+                    s.span = s.span.cover(angle.span);
+                }
+                _ => {
+                    let mut s = SiteWritten {
+                        span: angle.span,
+                        ..SiteWritten::default()
+                    };
+                    if latitude {
+                        s.latitude = Some(angle);
+                    } else {
+                        s.longitude = Some(angle);
+                    }
+                    self.out.sites.push(s);
+                }
+            }
+            return next;
+        }
         if is(Word::Time) || is(Word::Date) {
             // "times UT", "times are in UT", "Date (UT)"
             let mut k = i + 1;
@@ -563,7 +597,23 @@ impl<'t> Gatherer<'_, 't> {
                         .position(|(n, _)| n.places > 0)
                         .map_or(r.numbers.len(), |d| d + 1)
                         .min(3);
-                    return r.angle(0, take).map(|a| (a, k + 1));
+                    let mut angle = r.angle(0, take)?;
+                    let mut next = k + 1;
+                    // a compass letter after it
+                    if let Some(Kind::Word(p)) = self.atoms.get(next).map(|a| &a.kind)
+                        && let Some(point) = p.meanings().find_map(|w| match w {
+                            Word::Compass(c) => Some(c),
+                            _ => None,
+                        })
+                        && self.atoms[next]
+                            .span
+                            .of(self.text)
+                            .starts_with(char::is_uppercase)
+                    {
+                        angle.compass = Some(Spanned::new(point, self.atoms[next].span));
+                        next += 1;
+                    }
+                    return Some((angle, next));
                 }
                 Kind::Mark(':' | '=' | '.' | '(' | '~' | '≈' | ',') => {}
                 Kind::Word(p) if p.means(Word::Filler) || p.means(Word::At) => {}
