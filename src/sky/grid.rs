@@ -6,8 +6,9 @@
 //! [`super::moment::Moment`] costs, an isolated instant six of them: for runs of many instants only.
 
 use super::earth::{self, Earth};
+use super::nutation;
 use super::time::J2000;
-use sofars::pnp::{bpn2xy, eors, pnm06a, s06};
+use sofars::pnp::{bpn2xy, eors, s06};
 use std::sync::OnceLock;
 
 /// What is slow to compute of an instant.
@@ -23,7 +24,7 @@ pub struct Slow {
 
 /// The slow part computed directly at a TT instant.
 pub fn direct(tt: (f64, f64)) -> Slow {
-    let matrix = pnm06a(tt.0, tt.1);
+    let matrix = nutation::matrix(tt);
     let (x, y) = bpn2xy(&matrix);
     Slow {
         matrix,

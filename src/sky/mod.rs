@@ -23,6 +23,8 @@ pub mod hour_angle;
 pub mod icrs;
 pub mod mean;
 pub mod moment;
+pub mod nutation;
+mod series;
 pub mod time;
 
 use sofars::vm;
