@@ -5,7 +5,7 @@
 //! al. 1994) less the Moon of `moon98`, and the Sun about the barycentre from the four giant planets; the aberration is
 //! then off by some mas.
 
-use super::series::sin_cos;
+use super::series::{BLOCK, sin_cos};
 use super::time::J2000;
 use sofars::eph::{moon98, plan94};
 use std::f64::consts::TAU;
@@ -44,35 +44,23 @@ pub fn at(tdb: (f64, f64)) -> Earth {
     }
 }
 
-/// The series as the build script lays it out (`src/sky/data/tables.rs`); `STARTS` of each, by origin (Sun to Earth,
-/// barycentre to Sun), power of the time and axis.
+/// The series as the build script lays them out (`src/sky/data/tables.rs`): `TERMS` in blocks of amplitudes (au), phases
+/// (turns) and rates (turns a Julian year), and at which block each series begins, by origin (Sun to Earth, barycentre to
+/// Sun), power of the time and axis.
 mod table {
     include!(concat!(env!("OUT_DIR"), "/earth.rs"));
 }
 
 /// The series of `epv00` at a time in Julian years from J2000.0.
 fn by_series(t: f64) -> Earth {
-    let (mut cosines, mut sines) = ([0.0; table::TERMS], [0.0; table::TERMS]);
-    for i in 0..table::TERMS {
-        let rate = table::TURNS_A_YEAR[i];
-        let (sin, cos) = sin_cos(table::PHASE_TURNS[i] + rate * t);
-        cosines[i] = table::AMPLITUDE_AU[i] * cos;
-        sines[i] = table::AMPLITUDE_AU[i] * rate * sin;
-    }
     let [from_sun, from_centre] = [0, 1].map(|origin| {
         let mut pv: PosVel = [[0.0; 3]; 2];
-        for (power, (whole, less)) in [(1.0, 0.0), (t, 1.0), (t * t, 2.0 * t)]
-            .into_iter()
-            .enumerate()
-        {
+        let powers = [(1.0, 0.0), (t, 1.0), (t * t, 2.0 * t)];
+        for (power, (whole, less)) in powers.into_iter().enumerate() {
             for axis in 0..3 {
-                let series = origin * 9 + power * 3 + axis;
-                let terms = table::STARTS[series]..table::STARTS[series + 1];
-                // the largest come first: summed from the end
-                let cos: f64 = cosines[terms.clone()].iter().rev().sum();
-                let sin: f64 = sines[terms].iter().rev().sum();
+                let (cos, sin) = sums(origin * 9 + power * 3 + axis, t);
                 pv[0][axis] += whole * cos;
-                pv[1][axis] += (less * cos - whole * sin * TAU) / 365.25;
+                pv[1][axis] += (less * cos - whole * sin) / 365.25;
             }
         }
         pv
@@ -81,6 +69,26 @@ fn by_series(t: f64) -> Earth {
         heliocentric: from_sun.map(to_bcrs),
         barycentric: combine(from_sun, from_centre, 1.0).map(to_bcrs),
     }
+}
+
+/// The sums of the cosines of a series, and of its sines times their rates (a year).
+fn sums(series: usize, t: f64) -> (f64, f64) {
+    let mut sum = (0.0, 0.0);
+    // the largest terms come first: summed from the end
+    for [amplitude, phase, rate] in table::TERMS[table::STARTS[series]..table::STARTS[series + 1]]
+        .iter()
+        .rev()
+    {
+        let (mut cosines, mut sines) = ([0.0; BLOCK], [0.0; BLOCK]);
+        for i in 0..BLOCK {
+            let (sin, cos) = sin_cos(phase[i] + rate[i] * t);
+            cosines[i] = amplitude[i] * cos;
+            sines[i] = amplitude[i] * rate[i] * sin;
+        }
+        sum.0 += cosines.iter().sum::<f64>();
+        sum.1 += sines.iter().sum::<f64>();
+    }
+    (sum.0, sum.1 * TAU)
 }
 
 /// From the ecliptic of the series to BCRS axes (the matrix of ERFA `epv00`, fitted to DE405).

@@ -2,7 +2,7 @@
 //!
 //! Within 1e-5 µas of ERFA `pnm06a`, at a fifth of its cost (`tests/sky_grid.rs`). Tables: `src/sky/data/README.md`.
 
-use super::series::sin_cos;
+use super::series::{BLOCK, sin_cos};
 use super::time::J2000;
 use sofars::fundargs::{
     fae03, faf03, faju03, fal03, fama03, fame03, faom03, fapa03, fasa03, faur03, fave03,
@@ -10,13 +10,13 @@ use sofars::fundargs::{
 use sofars::pnp::{fw2m, pfw06};
 use std::f64::consts::TAU;
 
-/// The tables as the build script lays them out (`src/sky/data/tables.rs`): for each argument its multipliers in all
-/// terms, then the coefficients, 0.1 µas (and 0.1 µas a century).
+/// The tables as the build script lays them out (`src/sky/data/tables.rs`): in blocks of terms, the multipliers of each
+/// argument, then the coefficients, 0.1 µas (and 0.1 µas a century).
 mod table {
     include!(concat!(env!("OUT_DIR"), "/nutation.rs"));
 }
 
-use table::{LUNISOLAR, LUNISOLAR_BY, LUNISOLAR_TERMS, PLANETARY, PLANETARY_BY, PLANETARY_TERMS};
+use table::{LUNISOLAR, LUNISOLAR_BY, PLANETARY, PLANETARY_BY};
 
 /// 0.1 µas in radians.
 const UNIT_RAD: f64 = TAU / 1_296_000.0 / 1e7;
@@ -52,18 +52,29 @@ fn lunisolar(t: f64) -> (f64, f64) {
         elongation % 1_296_000.0 / 1_296_000.0,
         faom03(t) / TAU,
     ];
-    let (by, of) = (&LUNISOLAR_BY, &LUNISOLAR);
-    let (mut psi, mut epsilon) = ([0.0; LUNISOLAR_TERMS], [0.0; LUNISOLAR_TERMS]);
-    for i in 0..LUNISOLAR_TERMS {
-        let mut turns = 0.0;
-        for (k, argument) in arguments.into_iter().enumerate() {
-            turns += f64::from(by[k][i]) * argument;
+    let mut sum = (0.0, 0.0);
+    // the smallest terms, which are the last, first
+    for (by, of) in LUNISOLAR_BY.iter().zip(&LUNISOLAR).rev() {
+        let (mut psi, mut epsilon) = ([0.0; BLOCK], [0.0; BLOCK]);
+        for i in 0..BLOCK {
+            let (sin, cos) = sin_cos(turns(by, &arguments, i));
+            psi[i] = (of[0][i] + of[1][i] * t) * sin + of[2][i] * cos;
+            epsilon[i] = (of[3][i] + of[4][i] * t) * cos + of[5][i] * sin;
         }
-        let (sin, cos) = sin_cos(turns);
-        psi[i] = (of[0][i] + of[1][i] * t) * sin + of[2][i] * cos;
-        epsilon[i] = (of[3][i] + of[4][i] * t) * cos + of[5][i] * sin;
+        sum.0 += psi.iter().sum::<f64>();
+        sum.1 += epsilon.iter().sum::<f64>();
     }
-    (sum(&psi), sum(&epsilon))
+    (sum.0 * UNIT_RAD, sum.1 * UNIT_RAD)
+}
+
+/// The argument of a term of a block.
+#[inline(always)]
+fn turns<const N: usize>(by: &[[f32; BLOCK]; N], arguments: &[f64; N], term: usize) -> f64 {
+    let mut turns = 0.0;
+    for k in 0..N {
+        turns += f64::from(by[k][term]) * arguments[k];
+    }
+    turns
 }
 
 fn planetary(t: f64) -> (f64, f64) {
@@ -84,21 +95,16 @@ fn planetary(t: f64) -> (f64, f64) {
         fapa03(t),
     ]
     .map(|radians| radians % TAU / TAU);
-    let (by, of) = (&PLANETARY_BY, &PLANETARY);
-    let (mut psi, mut epsilon) = ([0.0; PLANETARY_TERMS], [0.0; PLANETARY_TERMS]);
-    for i in 0..PLANETARY_TERMS {
-        let mut turns = 0.0;
-        for (k, argument) in arguments.into_iter().enumerate() {
-            turns += f64::from(by[k][i]) * argument;
+    let mut sum = (0.0, 0.0);
+    for (by, of) in PLANETARY_BY.iter().zip(&PLANETARY).rev() {
+        let (mut psi, mut epsilon) = ([0.0; BLOCK], [0.0; BLOCK]);
+        for i in 0..BLOCK {
+            let (sin, cos) = sin_cos(turns(by, &arguments, i));
+            psi[i] = of[0][i] * sin + of[1][i] * cos;
+            epsilon[i] = of[2][i] * sin + of[3][i] * cos;
         }
-        let (sin, cos) = sin_cos(turns);
-        psi[i] = of[0][i] * sin + of[1][i] * cos;
-        epsilon[i] = of[2][i] * sin + of[3][i] * cos;
+        sum.0 += psi.iter().sum::<f64>();
+        sum.1 += epsilon.iter().sum::<f64>();
     }
-    (sum(&psi), sum(&epsilon))
-}
-
-/// The sum in radians, the smallest terms (the last) first.
-fn sum(terms: &[f64]) -> f64 {
-    terms.iter().rev().sum::<f64>() * UNIT_RAD
+    (sum.0 * UNIT_RAD, sum.1 * UNIT_RAD)
 }

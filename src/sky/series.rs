@@ -1,5 +1,8 @@
 //! Sine and cosine for long sums of terms: without branches or calls, so that the compiler takes several terms at once.
 
+/// Terms that are summed together; the tables are cut into such blocks.
+pub(crate) const BLOCK: usize = 16;
+
 /// Sine and cosine of an angle given in turns, within 1e-15 up to a hundred thousand turns beyond the rounding of the
 /// angle itself. By Taylor's series of a quarter of the angle (at most π/4) and doubling it twice.
 #[inline(always)]

@@ -547,6 +547,22 @@ fn columns(csv: &str, from: usize, to: usize) -> Vec<Vec<f64>> {
         .collect()
 }
 
+/// Terms that are summed together; `series.rs` has the same.
+const BLOCK: usize = 16;
+
+/// Columns cut into blocks, the last filled up with zeros: by block, column and term.
+fn blocks(columns: &[Vec<f64>]) -> Vec<Vec<Vec<f64>>> {
+    (0..columns[0].len().div_ceil(BLOCK))
+        .map(|block| {
+            let at = |column: &Vec<f64>, i: usize| column.get(block * BLOCK + i).copied();
+            columns
+                .iter()
+                .map(|c| (0..BLOCK).map(|i| at(c, i).unwrap_or(0.0)).collect())
+                .collect()
+        })
+        .collect()
+}
+
 fn nutation(lunisolar: &str, planetary: &str) -> Code {
     let mut code = Code::default();
     for (name, csv, arguments, coefficients) in [
@@ -554,12 +570,12 @@ fn nutation(lunisolar: &str, planetary: &str) -> Code {
         ("PLANETARY", planetary, 13, 4),
     ] {
         let by = columns(csv, 0, arguments);
-        let terms = by[0].len();
-        code.constant(&format!("{name}_TERMS"), "usize", terms);
         // multipliers are small whole numbers: no bit is lost
-        code.array(&format!("{name}_BY"), &format!("[f32; {terms}]"), &by);
+        let kind = format!("[[f32; {BLOCK}]; {arguments}]");
+        code.array(&format!("{name}_BY"), &kind, &blocks(&by));
         let of = columns(csv, arguments, arguments + coefficients);
-        code.array(name, &format!("[f64; {terms}]"), &of);
+        let kind = format!("[[f64; {BLOCK}]; {coefficients}]");
+        code.array(name, &kind, &blocks(&of));
     }
     code
 }
@@ -577,15 +593,20 @@ fn earth(csv: &str) -> Code {
         })
         .collect();
     terms.sort_by_key(|t| t.0);
-    let starts: Vec<usize> = (0..=18)
-        .map(|series| terms.partition_point(|t| t.0 < series))
-        .collect();
-    let column = |k: usize, per: f64| -> Vec<f64> { terms.iter().map(|t| t.1[k] / per).collect() };
+    let (mut starts, mut all) = (vec![0], Vec::new());
+    for series in 0..18 {
+        let of: Vec<&[f64; 3]> = terms
+            .iter()
+            .filter(|t| t.0 == series)
+            .map(|t| &t.1)
+            .collect();
+        let column = |k: usize, per: f64| of.iter().map(|t| t[k] / per).collect();
+        let turn = std::f64::consts::TAU;
+        all.extend(blocks(&[column(0, 1.0), column(1, turn), column(2, turn)]));
+        starts.push(all.len());
+    }
     let mut code = Code::default();
-    code.constant("TERMS", "usize", terms.len());
     code.array("STARTS", "usize", &starts);
-    code.array("AMPLITUDE_AU", "f64", &column(0, 1.0));
-    code.array("PHASE_TURNS", "f64", &column(1, std::f64::consts::TAU));
-    code.array("TURNS_A_YEAR", "f64", &column(2, std::f64::consts::TAU));
+    code.array("TERMS", &format!("[[f64; {BLOCK}]; 3]"), &all);
     code
 }
