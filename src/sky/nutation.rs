@@ -31,7 +31,7 @@ pub fn matrix(tt: (f64, f64)) -> [[f64; 3]; 3] {
 /// Nutation in longitude and obliquity, radians, with the IAU 2006 adjustments: as ERFA `nut06a`.
 pub fn angles(tt: (f64, f64)) -> (f64, f64) {
     let t = ((tt.0 - J2000) + tt.1) / 36_525.0;
-    let (psi_a, epsilon_a) = lunisolar(t);
+    let (psi_a, epsilon_a) = lunisolar(t, LUNISOLAR.len());
     let (psi_b, epsilon_b) = planetary(t);
     let (psi, epsilon) = (psi_a + psi_b, epsilon_a + epsilon_b);
     // Wallace & Capitaine 2006, eq. 5
@@ -39,7 +39,13 @@ pub fn angles(tt: (f64, f64)) -> (f64, f64) {
     (psi + psi * (0.4697e-6 + j2), epsilon + epsilon * j2)
 }
 
-fn lunisolar(t: f64) -> (f64, f64) {
+/// The same of its 32 largest terms, within 0.02″.
+pub fn largest(tt: (f64, f64)) -> (f64, f64) {
+    lunisolar(((tt.0 - J2000) + tt.1) / 36_525.0, 32 / BLOCK)
+}
+
+/// The sum of so many blocks of terms.
+fn lunisolar(t: f64, blocks: usize) -> (f64, f64) {
     // MHB2000 has its own anomaly of the Sun and elongation of the Moon, arcsec
     let anomaly = 1_287_104.793_05
         + t * (129_596_581.048_1 + t * (-0.5532 + t * (0.000_136 - t * 0.000_011_49)));
@@ -54,7 +60,11 @@ fn lunisolar(t: f64) -> (f64, f64) {
     ];
     let mut sum = (0.0, 0.0);
     // the smallest terms, which are the last, first
-    for (by, of) in LUNISOLAR_BY.iter().zip(&LUNISOLAR).rev() {
+    for (by, of) in LUNISOLAR_BY[..blocks]
+        .iter()
+        .zip(&LUNISOLAR[..blocks])
+        .rev()
+    {
         let (mut psi, mut epsilon) = ([0.0; BLOCK], [0.0; BLOCK]);
         for i in 0..BLOCK {
             let (sin, cos) = sin_cos(turns(by, &arguments, i));
