@@ -9,7 +9,15 @@ pub const EXPECTED: &str =
 /// Reads the name of a frame; the year rule is that of the sheets (Besselian below 1984 unless a letter is written).
 pub fn frame_named(word: &str) -> Result<Frame, String> {
     let plain = word.trim().trim_matches(['(', ')']).to_lowercase();
+    let plain = plain.replace(['-', '_'], " ").replace(',', ".");
     let plain = plain.strip_prefix("equinox ").unwrap_or(&plain).trim();
+    // control software's names for the equinox of date
+    if matches!(plain, "eod" | "jnow" | "j now" | "now") {
+        return Err(format!(
+            "“{}” could be the mean or the apparent equinox of date: write “of date” or “apparent”",
+            word.trim()
+        ));
+    }
     let (system, rest) = match plain.split_at_checked(4) {
         Some(("icrs", rest)) => (Some(System::Icrs), rest),
         _ => match plain.split_at_checked(3) {
@@ -18,7 +26,7 @@ pub fn frame_named(word: &str) -> Result<Frame, String> {
             _ => (None, plain),
         },
     };
-    let rest = rest.trim_matches([' ', ',', '/']);
+    let rest = rest.trim_matches([' ', '.', '/']);
     let of_date = |system| {
         Ok(Frame {
             system,
@@ -35,7 +43,7 @@ pub fn frame_named(word: &str) -> Result<Frame, String> {
         _ => {}
     }
     let (letter, number) = match rest.chars().next() {
-        Some(c @ ('j' | 'b')) => (Some(c), &rest[1..]),
+        Some(c @ ('j' | 'b')) => (Some(c), rest[1..].trim_start()),
         _ => (None, rest),
     };
     let well_formed = number.starts_with(|c: char| c.is_ascii_digit())
