@@ -3,7 +3,8 @@
 use super::{Now, now_at};
 use jiff::civil::{Date, Time};
 
-const EXPECTED: &str = "expected a date such as 2026-11-01, with or without a time: 2026-11-01 12:00 UT";
+const EXPECTED: &str =
+    "expected a date such as 2026-11-01, with or without a time: 2026-11-01 12:00 UT";
 
 const MONTHS: [&str; 12] = [
     "January",
@@ -39,7 +40,10 @@ pub(super) fn instant(word: &str) -> Result<Now, String> {
         _ => plain.parse::<jiff::Timestamp>(),
     };
     let timestamp = timestamp.map_err(|_| {
-        format!("“{}” is no time of day; {EXPECTED}", clock.to_lowercase().escape_debug())
+        format!(
+            "“{}” is no time of day; {EXPECTED}",
+            clock.to_lowercase().escape_debug()
+        )
     })?;
     now_at(timestamp.as_second(), timestamp.subsec_nanosecond())
         .ok_or_else(|| "that year is out of all reach".to_owned())
@@ -59,7 +63,9 @@ fn date(word: &str) -> Result<Date, String> {
     };
     let (year, month, day) = (number(year)?, number(month)?, number(day)?);
     let Some(name) = usize::try_from(month - 1).ok().and_then(|m| MONTHS.get(m)) else {
-        return Err(format!("there is no month {month}; months go from 01 to 12"));
+        return Err(format!(
+            "there is no month {month}; months go from 01 to 12"
+        ));
     };
     let first = Date::new(year, month as i8, 1).map_err(|_| EXPECTED.to_owned())?;
     let days = first.days_in_month();
@@ -90,7 +96,15 @@ mod tests {
         let told = |word: &str| instant(word).err().unwrap_or_default();
         assert!(told("2026-02-30").contains("February 2026 has 28 days"));
         assert!(told("2026-13-01").contains("no month 13"));
-        for word in ["yesterday", "", "2026", "2026-11-01 25:00", "2026--1-01", "99999-01-01", "2026-11-01 noon"] {
+        for word in [
+            "yesterday",
+            "",
+            "2026",
+            "2026-11-01 25:00",
+            "2026--1-01",
+            "99999-01-01",
+            "2026-11-01 noon",
+        ] {
             assert!(!told(word).is_empty(), "{word}");
         }
     }

@@ -1,8 +1,8 @@
 //! `colure rulebook`: what each rule asks, why, its formula and its source.
 
 use super::{NOT_DONE, print, sheets};
-use crate::rules::{self, Rule};
 use crate::output::plain::{one_line, wrapped};
+use crate::rules::{self, Rule};
 use std::io::{self, Write};
 
 pub(super) fn run(rule: Option<&str>) -> u8 {
@@ -59,7 +59,9 @@ fn page(rule: &Rule) -> String {
     text.push('\n');
     for line in [
         format!("To let one pass: [stet {name}: your reason] in the report's block."),
-        format!("To change its weight: `weights: {{ {name}: note }}` in colure.yaml (note, query, reject or off)."),
+        format!(
+            "To change its weight: `weights: {{ {name}: note }}` in colure.yaml (note, query, reject or off)."
+        ),
     ] {
         text.push_str(&wrapped(&line, "", "  ", columns));
         text.push('\n');

@@ -154,8 +154,7 @@ fn what_fails(words: &str) -> Option<String> {
         return None;
     }
     let told = |error: AngleError, axis: Axis| {
-        (!matches!(error, AngleError::Form(_)))
-            .then(|| format!("{}: {error}", axis.name()))
+        (!matches!(error, AngleError::Form(_))).then(|| format!("{}: {error}", axis.name()))
     };
     cuts(words).into_iter().find_map(|(first, second)| {
         let latitude = angle::read(first, Axis::Latitude);

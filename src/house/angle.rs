@@ -51,9 +51,7 @@ pub enum AngleError {
         part: &'static str,
     },
     /// The letter O for a direction.
-    #[error(
-        "“O” is east in German and Dutch, west in the Romance languages: write E or W"
-    )]
+    #[error("“O” is east in German and Dutch, west in the Romance languages: write E or W")]
     EastOrWest,
     /// A compass letter of the other axis.
     #[error("“{0}” is a letter of the other coordinate")]

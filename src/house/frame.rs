@@ -11,13 +11,6 @@ pub fn frame_named(word: &str) -> Result<Frame, String> {
     let plain = word.trim().trim_matches(['(', ')']).to_lowercase();
     let plain = plain.replace(['-', '_'], " ").replace(',', ".");
     let plain = plain.strip_prefix("equinox ").unwrap_or(&plain).trim();
-    // control software's names for the equinox of date
-    if matches!(plain, "eod" | "jnow" | "j now" | "now") {
-        return Err(format!(
-            "“{}” could be the mean or the apparent equinox of date: write “of date” or “apparent”",
-            word.trim()
-        ));
-    }
     let (system, rest) = match plain.split_at_checked(4) {
         Some(("icrs", rest)) => (Some(System::Icrs), rest),
         _ => match plain.split_at_checked(3) {
@@ -34,7 +27,10 @@ pub fn frame_named(word: &str) -> Result<Frame, String> {
         })
     };
     match (system, rest) {
-        (None, "of date" | "date" | "mean" | "mean of date") => return of_date(System::Mean),
+        // the short names that telescope controls use for it: common practice, no source
+        (None, "of date" | "date" | "mean" | "mean of date" | "eod" | "jnow" | "j now") => {
+            return of_date(System::Mean);
+        }
         (None, "apparent" | "true of date" | "apparent of date") => {
             return of_date(System::Apparent);
         }

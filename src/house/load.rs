@@ -42,8 +42,7 @@ pub fn load(path: &Path, rules: &[&str]) -> Result<House, HouseError> {
             "house rules are at most 64 KiB: put long lists of objects into CSV files and name them under known-objects",
         ));
     }
-    let bytes = std::fs::read(path)
-        .map_err(|e| whole(io_words(&e), "check its permissions"))?;
+    let bytes = std::fs::read(path).map_err(|e| whole(io_words(&e), "check its permissions"))?;
     let text = String::from_utf8(bytes).map_err(|e| {
         let at = e.utf8_error().valid_up_to();
         let line = e.as_bytes()[..at].iter().filter(|b| **b == b'\n').count() + 1;
@@ -212,7 +211,9 @@ fn in_words(said: &str, span: Option<Span>, text: &str) -> (String, &'static str
         );
     }
     if let Some((_, wrong)) = said.split_once("invalid type: ") {
-        let (found, wanted) = wrong.split_once(", expected ").unwrap_or((wrong, "something else"));
+        let (found, wanted) = wrong
+            .split_once(", expected ")
+            .unwrap_or((wrong, "something else"));
         let found = match found {
             "sequence" => "a list".to_owned(),
             "map" => "a group of `key: value` pairs".to_owned(),
@@ -235,7 +236,9 @@ fn in_words(said: &str, span: Option<Span>, text: &str) -> (String, &'static str
     }
     if said.contains("mapping values are not allowed") {
         return (
-            format!("line {number} has a colon too many, or its indentation fits no line before it"),
+            format!(
+                "line {number} has a colon too many, or its indentation fits no line before it"
+            ),
             "quote text that holds “: ”, and give keys of one level the same indentation",
         );
     }
@@ -322,7 +325,11 @@ impl Reading<'_> {
                     _ => format!("`{}` is no {what}", word.text()),
                 };
                 let low = low.to_string().replace('-', "−");
-                self.mistake(word, what, format!("expected a number from {low} to {high}"));
+                self.mistake(
+                    word,
+                    what,
+                    format!("expected a number from {low} to {high}"),
+                );
                 None
             }
         }
@@ -523,8 +530,10 @@ impl<'de> Draft<'de> {
             let broken = self.broken_sites.iter().any(|s| plain(s) == wanted);
             if self.house.site(site.text()).is_none() && !broken {
                 let names: Vec<&str> = self.house.sites.iter().map(|s| s.name.as_str()).collect();
-                let near = self.house.nearest_sites(site.text());
-                let expected = match near.first() {
+                let broken = self.broken_sites.iter().map(String::as_str);
+                let near = self.house.nearest_sites(site.text()).into_iter().next();
+                let near = near.or_else(|| nearest(site.text(), broken).map(str::to_owned));
+                let expected = match near {
                     Some(near) => format!("did you mean `{near}`?"),
                     None if names.is_empty() => "add it under sites".to_owned(),
                     None => format!("the register has: {}", names.join(", ")),

@@ -9,7 +9,8 @@ use std::path::Path;
 /// The columns a list may have.
 const COLUMNS: &[&str] = &["name", "ra", "dec", "equinox", "radius"];
 /// How a list begins, for messages.
-const HEADER: &str = "a first line “name,ra,dec” (and, where wanted, “equinox” and “radius”, in arcseconds)";
+const HEADER: &str =
+    "a first line “name,ra,dec” (and, where wanted, “equinox” and “radius”, in arcseconds)";
 /// More mistakes than this are one mistake made again and again.
 const MOST_MISTAKES: usize = 10;
 
@@ -253,7 +254,11 @@ fn object(cells: &Cells, columns: &Columns, list: &mut List) -> Option<KnownObje
         Some((i, word)) => match super::frame::frame_named(word) {
             Ok(frame) => Some(frame),
             Err(what) => {
-                list.wrong(Some(cells.place(i)), what, "write J2000.0 (ICRS) or B1950.0");
+                list.wrong(
+                    Some(cells.place(i)),
+                    what,
+                    "write J2000.0 (ICRS) or B1950.0",
+                );
                 return None;
             }
         },

@@ -46,10 +46,9 @@ pub fn not_reduced(examined: &Examined) -> &'static str {
         }
         (PositionKind::Equatorial, None) => "not reduced: the equinox is not known",
         (PositionKind::Equatorial, Some(_)) => {
-            let of_date = report
-                .equinoxes
-                .iter()
-                .any(|(tag, _)| tag.value.year == Some(EquinoxYear::OfDate) || tag.value.place.is_some());
+            let of_date = report.equinoxes.iter().any(|(tag, _)| {
+                tag.value.year == Some(EquinoxYear::OfDate) || tag.value.place.is_some()
+            });
             if of_date && meant.instant.is_none() {
                 "not reduced: “of date” needs the date of observation"
             } else {

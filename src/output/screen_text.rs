@@ -106,7 +106,11 @@ impl<W: Write> Screen<'_, W> {
             let message = harmless(finding.message.trim_end());
             let said = format!("{weight}: {message} ({})", finding.rule);
             writeln!(self.out)?;
-            writeln!(self.out, "{}", wrapped(&said, "  ", "    ", self.style.width))?;
+            writeln!(
+                self.out,
+                "{}",
+                wrapped(&said, "  ", "    ", self.style.width)
+            )?;
             let window = Window::on(
                 sheet,
                 name,
@@ -139,11 +143,13 @@ pub fn write_house_error(error: &HouseError, style: Style, out: &mut impl Write)
     let texts = error.lists.iter().map(|(path, text)| (path, text));
     let sheets: Vec<Sheet> = texts
         .chain([(&error.path, &error.text)])
-        .filter_map(|(path, text)| {
-            Sheet::decode(path.display().to_string(), text.as_bytes()).ok()
-        })
+        .filter_map(|(path, text)| Sheet::decode(path.display().to_string(), text.as_bytes()).ok())
         .collect();
-    writeln!(out, "{}: these house rules cannot be used.", harmless(&house))?;
+    writeln!(
+        out,
+        "{}: these house rules cannot be used.",
+        harmless(&house)
+    )?;
     for mistake in &error.mistakes {
         let file = mistake.list.as_ref().unwrap_or(&error.path);
         let name = file.display().to_string();

@@ -63,8 +63,9 @@ fn joined(slips: &[Slip]) -> Vec<Offer> {
                 let offer = &mut offers[*offer];
                 offer.share += slip.weight;
                 offer.reading = format!("{from} read as {}", or(others));
-                offer.because = "One digit is wrong, and everything in the report agrees with each of these."
-                    .to_owned();
+                offer.because =
+                    "One digit is wrong, and everything in the report agrees with each of these."
+                        .to_owned();
                 continue;
             }
             digits.push((offers.len(), from, place, vec![to]));

@@ -126,7 +126,9 @@ pub fn write(run: &Run, width: usize, out: &mut impl Write) -> io::Result<()> {
         .filter(|e| e.report.role == Role::Measured && e.meant.horizon.is_none())
         .count();
     let tally = Tally::of(run);
-    let accepted = examined().filter(|e| e.verdict() == Verdict::Accept).count();
+    let accepted = examined()
+        .filter(|e| e.verdict() == Verdict::Accept)
+        .count();
     let mut total = format!(
         "{} in {}: {} accepted, {} to query, {} to reject",
         counted(tally.reports, "report", "reports"),
