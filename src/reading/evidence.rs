@@ -75,6 +75,14 @@ impl Finder<'_, '_> {
         false
     }
 
+    /// Galactic or ecliptic coordinates are named right before it.
+    pub(super) fn other_coordinates(&self, i: usize) -> bool {
+        (i.saturating_sub(7)..i)
+            .rev()
+            .take_while(|&k| !matches!(self.atoms[k].kind, Kind::LineEnd | Kind::Mark(';')))
+            .any(|k| self.atoms[k].means(Word::Galactic) || self.atoms[k].means(Word::Ecliptic))
+    }
+
     /// A name's word right before it.
     pub(super) fn name_right_before(&self, i: usize) -> bool {
         i > 0

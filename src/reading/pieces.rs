@@ -5,7 +5,7 @@ use super::run::Run;
 use super::scan::Kind;
 use super::text::Text;
 use super::words::Word;
-use crate::report::{Angle, AngleUnit, Compass, Mark, Position, PositionKind};
+use crate::report::{Angle, AngleUnit, Compass, Mark, Position, PositionKind, Sign};
 use crate::span::{Span, Spanned};
 use nom::Parser;
 use nom::branch::alt;
@@ -23,10 +23,32 @@ impl Finder<'_, '_> {
                 continue;
             }
             match &atom.kind {
-                Kind::Angle(_) | Kind::Run(_) | Kind::Joined(_) => return Some(i),
+                Kind::Angle(_) | Kind::Run(_) | Kind::Joined(_) => {
+                    // "-.04": a number that begins with its point is not read
+                    let before = i.checked_sub(1).map(|k| &self.atoms[k]);
+                    if before.is_some_and(|a| {
+                        a.is_mark('.') && a.span.end == atom.span.start && i > from
+                    }) {
+                        let attached = i >= 2
+                            && self.atoms[i - 2].span.end == self.atoms[i - 1].span.start
+                            && matches!(self.atoms[i - 2].kind, Kind::Word(_));
+                        if !attached {
+                            return None;
+                        }
+                    }
+                    // a minus left at the end of the line before
+                    if i >= from + 2
+                        && matches!(self.atoms[i - 1].kind, Kind::LineEnd)
+                        && matches!(self.atoms[i - 2].kind, Kind::Mark(c) if super::number::is_dash(c))
+                    {
+                        g.minus = Some(Spanned::new(Sign::Minus, self.atoms[i - 2].span));
+                    }
+                    return Some(i);
+                }
                 Kind::Equinox(t) => g.tags.push(Spanned::new(*t, atom.span)),
                 Kind::Uncertainty(_) => {}
                 Kind::LineEnd if lines && line_ends == 0 => line_ends += 1,
+                Kind::Mark(c) if super::number::is_dash(*c) => {}
                 Kind::Mark(c) if "=:,;/|()[]{}~.-–&≈<>*_`$\\\"".contains(*c) => {}
                 Kind::Word(p) => {
                     if p.means(Word::Degrees) {
@@ -259,6 +281,29 @@ impl Finder<'_, '_> {
         Some((whole, after))
     }
 
+    /// A label of a declination with a number within a dozen atoms, on this line or the next.
+    pub(super) fn dec_label_near(&self, from: usize) -> bool {
+        let mut ends = 0;
+        for i in from..self.atoms.len().min(from + 14) {
+            if matches!(self.atoms[i].kind, Kind::LineEnd) {
+                ends += 1;
+            }
+            match self.axis(i) {
+                Some(Axis::Dec | Axis::PolarDistance) => {
+                    return self
+                        .to_number(i + 1, &mut Gathered::default(), true)
+                        .is_some();
+                }
+                Some(Axis::Ra) => return false,
+                _ => {}
+            }
+            if ends > 1 {
+                return false;
+            }
+        }
+        false
+    }
+
     /// A label of a declination not far ahead, with no other right ascension before it.
     pub(super) fn dec_label_ahead(&self, from: usize) -> bool {
         for i in from..self.atoms.len().min(from + 40) {
@@ -343,11 +388,15 @@ impl Finder<'_, '_> {
             || (degrees(ra, unit) - degrees(other, self.unit_of(other, None))).abs() < 1.0
     }
 
-    pub(super) fn compass_atom(&self, i: usize, dec: &Angle) -> Option<Spanned<Compass>> {
+    pub(super) fn compass_atom(&self, i: usize, dec: &Angle) -> Option<(Spanned<Compass>, usize)> {
         if dec.compass.is_some() || dec.sign.is_some() {
             return None;
         }
-        let atom = self.atoms.get(i)?;
+        // "S", "south", "(south)", ", south"
+        let bracket = self.atoms.get(i)?.is_mark('(');
+        let comma = self.atoms[i].is_mark(',');
+        let k = i + usize::from(bracket || comma);
+        let atom = self.atoms.get(k)?;
         let Kind::Word(p) = &atom.kind else {
             return None;
         };
@@ -357,7 +406,12 @@ impl Finder<'_, '_> {
         })?;
         let words = atom.span.of(self.text);
         let single = words.chars().filter(|c| c.is_alphabetic()).count() == 1;
-        (!single || words.starts_with(char::is_uppercase)).then_some(Spanned::new(point, atom.span))
+        if single && (comma || words.starts_with(char::is_lowercase))
+            || bracket && !self.atoms.get(k + 1)?.is_mark(')')
+        {
+            return None;
+        }
+        Some((Spanned::new(point, atom.span), k + 1 + usize::from(bracket)))
     }
 
     /// `12.5 arcsec`, `-33.1 mas/yr`, `6".4`: too small a unit for a coordinate.

@@ -7,7 +7,7 @@ use super::pieces::{in_range, plausible, position, ra_before, same_shape, sexage
 use super::run::Run;
 use super::scan::{Atom, Kind};
 use super::words::Word;
-use crate::report::{Angle, AngleUnit, Compass, Mark, Position, PositionKind};
+use crate::report::{Angle, AngleUnit, Compass, Mark, Position, PositionKind, Sign};
 use crate::span::Spanned;
 
 /// A position found in a block, with what stands on it.
@@ -43,6 +43,8 @@ pub(super) enum Axis {
 pub(super) struct Gathered {
     pub tags: Vec<Spanned<Tagged>>,
     pub unit: Option<AngleUnit>,
+    /// A minus left at the end of a line, before its number.
+    pub minus: Option<Spanned<Sign>>,
 }
 
 /// All positions of a block's atoms.
@@ -201,9 +203,12 @@ impl<'t> Finder<'_, 't> {
                     let Some(at) = self.to_number(next + 1, &mut h, true) else {
                         break None;
                     };
-                    let Some((dec, used)) = self.angle_at(at, Axis::Dec, Some(&ra)) else {
+                    let Some((mut dec, used)) = self.angle_at(at, Axis::Dec, Some(&ra)) else {
                         break None;
                     };
+                    if dec.sign.is_none() {
+                        dec.sign = h.minus;
+                    }
                     g.tags.append(&mut h.tags);
                     break Some((dec, used, which == Axis::PolarDistance));
                 }
@@ -223,13 +228,9 @@ impl<'t> Finder<'_, 't> {
                 Kind::Angle(_) | Kind::Run(_) | Kind::Joined(_) => {
                     // directly after the RA: the declination, or the RA once more in another form
                     let (candidate, after) = self.angle_at(next, Axis::Dec, Some(&ra))?;
-                    // in a bracket, with the declination's own label ahead: an error, or another form
-                    let bracketed = self.between_is(used, next, &['(', '[', '{'])
-                        && !self.between_is(used, next, &['=']);
-                    if bracketed
-                        && self.dec_label_ahead(after)
-                        && !self.same_kind_of_ra(&ra, unit, &candidate)
-                    {
+                    // with the declination's own label ahead: an error of the right ascension, or another form of it
+                    let ahead = self.dec_label_near(after);
+                    if ahead && !self.same_kind_of_ra(&ra, unit, &candidate) {
                         forms_passed += 1;
                         next = after;
                         continue;
@@ -300,10 +301,10 @@ impl<'t> Finder<'_, 't> {
                 if let Some((whole, after)) = self.rejoined(&dec, end, ra.parts().len()) {
                     (dec, end) = (whole, after);
                 }
-                if let Some(c) = self.compass_atom(end, &dec) {
+                if let Some((c, after)) = self.compass_atom(end, &dec) {
                     dec.compass = Some(c);
                     dec.span.end = c.span.end;
-                    end += 1;
+                    end = after;
                 }
                 let mut other_forms = Vec::new();
                 if let Some((again, again_unit)) = other_ra {
@@ -522,7 +523,9 @@ impl<'t> Finder<'_, 't> {
         let dec_marked = dec.marked_unit() == Some(AngleUnit::Degrees)
             || dec.sign.is_some()
             || dec.compass.is_some();
-        if self.blocked(i) && !tag {
+        if self.blocked(i) && !tag
+            || self.other_coordinates(i) && ra.marked_unit() != Some(AngleUnit::Hours)
+        {
             return None;
         }
         if ra.sign.is_some()
@@ -624,10 +627,10 @@ impl<'t> Finder<'_, 't> {
         if let Some((whole, after)) = self.rejoined(&dec, end, ra.parts().len()) {
             (dec, end) = (whole, after);
         }
-        if let Some(c) = self.compass_atom(end, &dec) {
+        if let Some((c, after)) = self.compass_atom(end, &dec) {
             dec.compass = Some(c);
             dec.span.end = c.span.end;
-            end += 1;
+            end = after;
         }
         g.tags.append(&mut h.tags);
         let unit = self.unit_of(

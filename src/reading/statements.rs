@@ -55,6 +55,7 @@ pub fn gather(text: &str, atoms: &[Atom], taken: &[(usize, usize)]) -> Statement
         atoms,
         taken,
         out: Statements::default(),
+        foreign: Vec::new(),
     };
     let mut i = 0;
     while i < atoms.len() {
@@ -64,6 +65,16 @@ pub fn gather(text: &str, atoms: &[Atom], taken: &[(usize, usize)]) -> Statement
         }
         i = g.statement(i).max(i + 1);
     }
+    // an instant under a label of its own ("Last negative: …") is not that of the observation, if there is another
+    let labels = g.foreign;
+    g.out.instants.sort_by_key(|i| labels.contains(&i.span));
+    if g.out
+        .instants
+        .iter()
+        .any(|i| !labels.contains(&i.span) && i.date.is_some())
+    {
+        g.out.instants.retain(|i| !labels.contains(&i.span));
+    }
     g.out
 }
 
@@ -72,6 +83,8 @@ struct Gatherer<'a, 't> {
     atoms: &'a [Atom<'t>],
     taken: &'a [(usize, usize)],
     out: Statements,
+    /// Instants under a label that says something else.
+    foreign: Vec<Span>,
 }
 
 impl<'t> Gatherer<'_, 't> {
@@ -80,7 +93,12 @@ impl<'t> Gatherer<'_, 't> {
         let atom = &self.atoms[i];
         match &atom.kind {
             Kind::Stet(s) => self.out.stets.push(s.clone()),
-            Kind::Instant(instant) => self.out.instants.push((**instant).clone()),
+            Kind::Instant(instant) => {
+                if self.foreign_label(i) {
+                    self.foreign.push(instant.span);
+                }
+                self.out.instants.push((**instant).clone());
+            }
             Kind::Equinox(t) => {
                 if !t.weak || (t.tag.misspelt && self.bracketed(i)) {
                     self.out.tags.push(Spanned::new(*t, atom.span));
@@ -651,6 +669,41 @@ impl<'t> Gatherer<'_, 't> {
             }
         }
         false
+    }
+
+    /// "Last negative:" opens its line: a label of words that mean no date, time, site or object.
+    fn foreign_label(&self, i: usize) -> bool {
+        let line = self.atoms[i].line;
+        let start = self.atoms[..i]
+            .iter()
+            .rposition(|a| a.line != line || matches!(a.kind, Kind::LineEnd))
+            .map_or(0, |k| k + 1);
+        let label = &self.atoms[start..i];
+        let Some((last, words)) = label.split_last() else {
+            return false;
+        };
+        const OWN: [Word; 7] = [
+            Word::Date,
+            Word::Time,
+            Word::Night,
+            Word::Object,
+            Word::Position,
+            Word::Universal,
+            Word::Found,
+        ];
+        last.is_mark(':')
+            && (1..=3).contains(&words.len())
+            && words
+                .iter()
+                .all(|a| matches!(a.kind, Kind::Plain | Kind::Word(_)))
+            && words.iter().any(|a| matches!(a.kind, Kind::Plain))
+            && !words
+                .iter()
+                .any(|a| OWN.iter().any(|w| a.means(*w)) || a.means(Word::New))
+            && !self
+                .taken
+                .iter()
+                .any(|(a, _)| self.atoms.get(*a).is_some_and(|p| p.line == line))
     }
 
     /// A line that speaks of positions, or one closed by a colon, and holds none.
