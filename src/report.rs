@@ -554,6 +554,8 @@ pub struct Report {
     pub instants: Vec<(InstantWritten, Nearness)>,
     /// The site, where one is written.
     pub site: Option<(SiteWritten, Nearness)>,
+    /// Capitalised words of its part that could name a site of the register, where no site is written.
+    pub mentions: Vec<Spanned<String>>,
     /// Altitude, azimuth, hour angle, airmass stated beside it.
     pub stated_horizon: Vec<StatedHorizon>,
     /// Galactic or ecliptic coordinates stated beside it.

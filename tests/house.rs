@@ -469,6 +469,7 @@ fn report() -> Report {
         magnitude: None,
         uncertainty_arcsec: None,
         claims_new: None,
+        mentions: Vec::new(),
         stets: Vec::new(),
         block: Span::default(),
     }

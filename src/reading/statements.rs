@@ -386,7 +386,12 @@ impl<'t> Gatherer<'_, 't> {
             self.out.constellation = Some(name);
         }
         if is(Word::Magnitude) {
-            let limiting = i > 0
+            let near = self.atoms[i.saturating_sub(5)..=i]
+                .iter()
+                .map(|a| a.span.of(self.text).to_lowercase());
+            let limiting = near.clone().any(|w| {
+                w.starts_with("grenz") || w.starts_with("limit") || w.starts_with("límit")
+            }) || i > 0
                 && self.atoms[i - 1]
                     .span
                     .of(self.text)

@@ -68,6 +68,16 @@ pub fn rows(sheet: &Sheet, head: &Head, end: usize) -> Vec<Row> {
 pub fn rows_from(sheet: &Sheet, head: &Head, from: usize, end: usize) -> Vec<Row> {
     let mut found: Vec<Row> = Vec::new();
     let mut misses = 0;
+    let mut head = head.clone();
+    // a second line of the head may name the year: "2024   h m   o '"
+    if from == head.line + 1
+        && from < end
+        && head.year.is_none()
+        && let Some(year) = year_line(sheet, from)
+    {
+        head.year = Some(year);
+    }
+    let head = &head;
     for line in from..end {
         let body = sheet.lines()[line].body;
         let words = body.of(&sheet.text);
@@ -128,6 +138,18 @@ fn padded_seconds(rows: &mut [Row]) {
             }
         }
     }
+}
+
+/// The year that opens a line of units.
+fn year_line(sheet: &Sheet, line: usize) -> Option<i32> {
+    let words = sheet.lines()[line].body.of(&sheet.text);
+    let first = words.split_whitespace().next()?;
+    let year: i32 = first.parse().ok()?;
+    let units = words
+        .split_whitespace()
+        .skip(1)
+        .all(|w| !w.contains(|c: char| c.is_ascii_digit()));
+    ((1500..2300).contains(&year) && first.len() == 4 && units).then_some(year)
 }
 
 /// Dates that leave out their year or month take them from the row above, or the year from the head.
