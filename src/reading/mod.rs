@@ -7,6 +7,8 @@
 
 pub mod angle;
 mod assemble;
+pub mod clock;
+pub mod date;
 pub mod equinox;
 mod evidence;
 mod fold;
@@ -28,5 +30,6 @@ mod table;
 pub mod text;
 pub mod uncertainty;
 pub mod words;
+pub mod zone;
 
 pub use assemble::read;

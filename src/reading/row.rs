@@ -155,6 +155,7 @@ impl Cells {
                     let i = InstantWritten {
                         date: Some(d),
                         clock: None,
+                        clock_unread: None,
                         zone: None,
                         until: None,
                         plus_s: None,
@@ -314,6 +315,7 @@ impl Cells {
                     self.date = Some(InstantWritten {
                         date: None,
                         clock: Some(c),
+                        clock_unread: None,
                         zone: z,
                         until: None,
                         plus_s: None,

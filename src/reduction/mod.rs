@@ -65,6 +65,9 @@ pub fn mean_by(report: &Report, house: &House, to: Frame, clock: Clock) -> Meant
     meant
 }
 
+/// An instant known to no better than this says nothing of the horizon, seconds.
+const HALF_DAY_S: f64 = 43_200.0;
+
 /// A way from UTC to what the sky needs of an instant.
 pub type Clock = fn((f64, f64)) -> Moment;
 
@@ -88,7 +91,10 @@ impl Sky {
                 .instant
                 .map(|i| i.utc)
                 .filter(|&utc| Moment::is_computable(utc)),
-            sure: meant.instant_trouble.is_none() && meant.site_trouble.is_none(),
+            // a date alone is no time of the night
+            sure: meant.instant_trouble.is_none()
+                && meant.site_trouble.is_none()
+                && meant.instant.is_none_or(|i| i.step_s < HALF_DAY_S),
             ground: meant.site.as_ref().map(|s| crate::sky::Ground {
                 latitude_deg: s.latitude_deg,
                 longitude_deg: s.longitude_deg,
