@@ -85,6 +85,8 @@ const PLAIN: &[(&str, &str)] = &[
     ("feet", "Feet"),
     ("from-south", "FromSouth"),
     ("west-positive", "WestPositive"),
+    ("minus", "Minus"),
+    ("plus", "Plus"),
 ];
 
 /// The word table: (folded phrase, exact words or "", final dot may be left out, meaning, language).

@@ -369,8 +369,10 @@ pub enum JulianCount {
     Jd,
     /// MJD = JD - 2400000.5
     Mjd,
-    /// JD less 2400000, by whatever name (`JD 2460000+`)
+    /// JD less 2400000, by whatever name (`JD-2400000`)
     Reduced,
+    /// "JD" with five digits (`JD 60738.25`): [`JulianCount::Reduced`] or [`JulianCount::Mjd`], which begin 12 hours apart
+    Short,
     /// HJD: at the Sun
     Hjd,
     /// BJD: at the barycentre
@@ -422,6 +424,8 @@ pub struct InstantWritten {
     pub date: Option<Spanned<DateWritten>>,
     /// The clock time.
     pub clock: Option<Clock>,
+    /// Digits and a zone after the date that could not be read as a clock time: then there is no instant.
+    pub clock_unread: Option<Span>,
     /// The zone or scale.
     pub zone: Option<Spanned<Zone>>,
     /// The end of a range, where one is written (`22:31-22:35`): the mid time is what counts.
@@ -743,6 +747,10 @@ pub enum InstantTrouble {
     },
     /// A time and no date.
     DateMissing,
+    /// A date without a year, and none carried to it.
+    YearMissing,
+    /// Words after the date that are a clock time and could not be read: their place.
+    ClockUnread(Span),
 }
 
 /// Why there is no site, where words for one were written.

@@ -27,14 +27,13 @@ pub fn angle_hours(input: Text<'_>) -> Parsed<'_, Angle> {
     let (mut rest, hours) = marked(rest, hour_mark)?;
     let mut parts = vec![hours];
     if hours.number.places == 0 {
-        if let Ok((r, minutes)) =
-            marked(rest.skip_blanks(), alt((minute_letter, prime, broken_mark)))
+        if let Ok((r, minutes)) = marked(next_part(rest), alt((minute_letter, prime, broken_mark)))
         {
             rest = r;
             parts.push(minutes);
             if minutes.number.places == 0
                 && let Ok((r, seconds)) = marked(
-                    rest.skip_blanks(),
+                    next_part(rest),
                     alt((second_letter, double_prime, broken_mark)),
                 )
                 .or_else(|_| unmarked(rest))
@@ -55,6 +54,14 @@ pub fn angle_hours(input: Text<'_>) -> Parsed<'_, Angle> {
             }
         }
     }
+    // a north or south after hours belongs to the declination that follows
+    let toward = compass(rest.skip_blanks());
+    if toward.is_ok_and(|(_, c)| matches!(c, Compass::North | Compass::South)) {
+        return match Angle::new(s, &parts, None, input.span_to(rest)) {
+            Some(a) => Ok((rest, a)),
+            None => no(input),
+        };
+    }
     finish(input, rest, s, &parts)
 }
 
@@ -66,15 +73,13 @@ pub fn angle_degrees(input: Text<'_>) -> Parsed<'_, Angle> {
     // a broken mark alone proves nothing: it must be followed by minutes
     let mut parts = vec![degrees];
     if degrees.number.places == 0 {
-        if let Ok((r, minutes)) = marked(
-            rest.skip_blanks(),
-            alt((double_prime_as_none, prime, minute_letter, broken_mark)),
-        ) {
+        if let Ok((r, minutes)) = marked(next_part(rest), alt((prime, minute_letter, broken_mark)))
+        {
             rest = r;
             parts.push(minutes);
             if minutes.number.places == 0
                 && let Ok((r, seconds)) = marked(
-                    rest.skip_blanks(),
+                    next_part(rest),
                     alt((double_prime, second_letter, prime, broken_mark)),
                 )
                 .or_else(|_| unmarked(rest))
@@ -200,13 +205,11 @@ pub fn angle_colons(input: Text<'_>) -> Parsed<'_, Angle> {
     {
         return no(input);
     }
-    let (rest, last) = match alt((second_letter, double_prime)).parse(rest) {
-        Ok((r, m)) if parts.len() == 3 && !point_glued(rest) => (r, m),
-        _ => (rest, Mark::None),
+    // a mark after the seconds says nothing that the colons have not said
+    let rest = match alt((second_letter, double_prime)).parse(rest) {
+        Ok((r, _)) if parts.len() == 3 && !point_glued(rest) => r,
+        _ => rest,
     };
-    if let Some(p) = parts.last_mut() {
-        p.mark = last;
-    }
     if rest.peek().is_some_and(|c| c.is_alphabetic()) && !point_glued(rest) {
         return no(input);
     }
@@ -433,17 +436,26 @@ fn unmarked(input: Text<'_>) -> Parsed<'_, Part> {
     }
 }
 
-/// A minutes part never carries a double prime.
-fn double_prime_as_none(input: Text<'_>) -> Parsed<'_, Mark> {
-    no(input)
+/// From a mark to the next number: blanks; after a word also a comma and "and" (`10 hours, 5 minutes and 22 seconds`).
+fn next_part(input: Text<'_>) -> Text<'_> {
+    let mut rest = input.skip_blanks();
+    let worded = input.before().is_some_and(char::is_alphabetic);
+    if worded && rest.as_str().starts_with(", ") {
+        rest = rest.skip(1).skip_blanks();
+    }
+    let and = ["and ", "und ", "et ", "y ", "e ", "en ", "i "];
+    if worded && let Some(w) = and.iter().find(|w| rest.as_str().starts_with(**w)) {
+        rest = rest.skip(w.len()).skip_blanks();
+    }
+    rest
 }
 
 /// A letter, digit or underscore directly after: the number is part of something else.
 pub(super) fn glued(rest: Text<'_>) -> bool {
     match rest.peek() {
         Some(c) if c.is_alphanumeric() || c == '_' => true,
-        // 22-00-52, 12.34.56, 05/22
-        Some(c) if is_dash(c) || c == '.' || c == ':' => rest
+        // 22-00-52, 12.34.56, 24~18, 24*18: an unknown mark between digits
+        Some(c) if is_dash(c) || ".:~*#^?!%=$@°º˚∘·\u{fffd}".contains(c) => rest
             .skip(c.len_utf8())
             .peek()
             .is_some_and(|d| d.is_ascii_digit()),

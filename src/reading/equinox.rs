@@ -16,6 +16,8 @@ pub struct Tagged {
     pub epoch_word: bool,
     /// A bare year or a misspelt tag: counts only where a tag belongs (in brackets, beside a position, in a head).
     pub weak: bool,
+    /// "Epoch 2024.85": no year that coordinates are referred to, so the epoch of the place and no equinox.
+    pub unlikely_equinox: bool,
 }
 
 const NOTHING: EquinoxTag = EquinoxTag {
@@ -30,6 +32,7 @@ pub fn equinox_tag(input: Text<'_>) -> Parsed<'_, Tagged> {
     let mut tag = NOTHING;
     let (mut rest, mut end) = (input, input);
     let (mut keyword, mut epoch_word, mut of_equinox) = (false, false, false);
+    let mut says_equinox = false;
     loop {
         let here = rest;
         if let Ok((after, (letter, year))) = lettered_year(here)
@@ -87,6 +90,7 @@ pub fn equinox_tag(input: Text<'_>) -> Parsed<'_, Tagged> {
         {
             keyword = true;
             of_equinox = true;
+            says_equinox = true;
             rest = after;
         } else if let Some(after) = says(here, Word::Epoch)
             && tag.year.is_none()
@@ -124,6 +128,7 @@ pub fn equinox_tag(input: Text<'_>) -> Parsed<'_, Tagged> {
                     tag,
                     epoch_word: false,
                     weak: false,
+                    unlikely_equinox: false,
                 },
             ));
         }
@@ -146,8 +151,19 @@ pub fn equinox_tag(input: Text<'_>) -> Parsed<'_, Tagged> {
             tag,
             epoch_word,
             weak: false,
+            unlikely_equinox: epoch_word && !says_equinox && odd_year(&tag),
         },
     ))
+}
+
+/// A year between those that catalogues and almanacs use: 2024.85 is none, 1875.0 and 2024.5 are.
+fn odd_year(tag: &EquinoxTag) -> bool {
+    let Some(EquinoxYear::Year { year, .. }) = tag.year else {
+        return false;
+    };
+    let scale = 10u64.pow(u32::from(year.places));
+    let part = year.mantissa % scale;
+    part != 0 && part * 2 != scale
 }
 
 /// A bare year where a tag belongs: `2000.0`, `1950`; and tags that are misspelt. Weak: the caller must know that a tag belongs there.
@@ -160,11 +176,13 @@ pub fn equinox_year(input: Text<'_>) -> Parsed<'_, Tagged> {
             },
             epoch_word: false,
             weak: true,
+            unlikely_equinox: false,
         }),
         misspelt_tag.map(|tag| Tagged {
             tag,
             epoch_word: false,
             weak: true,
+            unlikely_equinox: false,
         }),
     ))
     .parse(input)

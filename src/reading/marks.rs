@@ -25,11 +25,14 @@ fn letters<'a>(input: Text<'a>, forms: &[&str]) -> Option<Text<'a>> {
     })
 }
 
-/// `h`, `hr`, `hrs`, `ʰ`, `^h`, or the word in any of the languages.
+/// `h`, `hr`, `hrs`, `u` (Dutch), `ʰ`, `^h`, `$^{h}$`, or the word in any of the languages.
 pub fn hour_mark(input: Text<'_>) -> Parsed<'_, Mark> {
-    let rest = any_of(input, &["ʰ", "^h", "^{h}", "$^h$", "<sup>h</sup>"])
-        .or_else(|| letters(input, &["hrs.", "hrs", "hr.", "hr", "h.", "h"]))
-        .or_else(|| says(input, Word::Hours));
+    let rest = any_of(
+        input,
+        &["ʰ", "$^{h}$", "$^h$", "^{h}", "^h", "<sup>h</sup>"],
+    )
+    .or_else(|| letters(input, &["hrs.", "hrs", "hr.", "hr", "h.", "h", "u"]))
+    .or_else(|| says(input, Word::Hours));
     rest.map_or_else(|| no(input), |r| Ok((r, Mark::Hour)))
 }
 
@@ -41,10 +44,13 @@ pub fn degree_mark(input: Text<'_>) -> Parsed<'_, Mark> {
             "°",
             "º",
             "˚",
+            "∘",
             "&deg;",
             "&#176;",
             "&#xb0;",
             "ᵈ",
+            "$^\\circ$",
+            "$^{\\circ}$",
             "^d",
             "^{d}",
             "^\\circ",
@@ -55,8 +61,8 @@ pub fn degree_mark(input: Text<'_>) -> Parsed<'_, Mark> {
     .or_else(|| letters(input, &["deg.", "deg", "d"]))
     .or_else(|| says(input, Word::Degrees))
     .or_else(|| {
-        // the letter o for °: only directly between digits
-        let r = any_of(input, &["o"])?;
+        // the letter o or a star for °: only directly between digits
+        let r = any_of(input, &["o", "*"])?;
         (input.before().is_some_and(|c| c.is_ascii_digit())
             && r.peek().is_some_and(|c| c.is_ascii_digit() || c == '.'))
         .then_some(r)
@@ -66,17 +72,23 @@ pub fn degree_mark(input: Text<'_>) -> Parsed<'_, Mark> {
 
 /// The letter `m`, `min`, `ᵐ`, `^m`, or the word.
 pub fn minute_letter(input: Text<'_>) -> Parsed<'_, Mark> {
-    let rest = any_of(input, &["ᵐ", "^m", "^{m}", "<sup>m</sup>"])
-        .or_else(|| letters(input, &["mins", "min.", "min", "m"]))
-        .or_else(|| says(input, Word::Minutes));
+    let rest = any_of(
+        input,
+        &["ᵐ", "$^{m}$", "$^m$", "^m", "^{m}", "<sup>m</sup>"],
+    )
+    .or_else(|| letters(input, &["mins", "min.", "min", "m"]))
+    .or_else(|| says(input, Word::Minutes));
     rest.map_or_else(|| no(input), |r| Ok((r, Mark::Minute)))
 }
 
 /// The letter `s`, `sec`, `ˢ`, `^s`, or the word.
 pub fn second_letter(input: Text<'_>) -> Parsed<'_, Mark> {
-    let rest = any_of(input, &["ˢ", "^s", "^{s}", "<sup>s</sup>"])
-        .or_else(|| letters(input, &["secs", "sec.", "sec", "s"]))
-        .or_else(|| says(input, Word::Seconds));
+    let rest = any_of(
+        input,
+        &["ˢ", "$^{s}$", "$^s$", "^s", "^{s}", "<sup>s</sup>"],
+    )
+    .or_else(|| letters(input, &["secs", "sec.", "sec", "s"]))
+    .or_else(|| says(input, Word::Seconds));
     rest.map_or_else(|| no(input), |r| Ok((r, Mark::Second)))
 }
 
@@ -85,8 +97,8 @@ pub fn double_prime(input: Text<'_>) -> Parsed<'_, Mark> {
     let rest = any_of(
         input,
         &[
-            "\"", "″", "”", "“", "„", "''", "′′", "’’", "‘‘", "``", "´´", "&Prime;", "&quot;",
-            "&#34;", "&#8243;", "&rdquo;", "ʺ", "＂",
+            "\"\"", "\"", "″", "”", "“", "„", "''", "′′", "’’", "‘‘", "``", "´´", "&Prime;",
+            "&quot;", "&#34;", "&#8243;", "&#x2033;", "&rdquo;", "ʺ", "＂",
         ],
     )
     .or_else(|| letters(input, &["arcsecs", "arcsec.", "arcsec", "asec"]))
@@ -102,8 +114,8 @@ pub fn prime(input: Text<'_>) -> Parsed<'_, Mark> {
     let rest = any_of(
         input,
         &[
-            "'", "′", "’", "‘", "´", "`", "&prime;", "&#39;", "&#8242;", "&apos;", "&rsquo;", "ʹ",
-            "＇",
+            "'", "′", "’", "‘", "´", "`", "&prime;", "&#39;", "&#8242;", "&#x2032;", "&apos;",
+            "&rsquo;", "ʹ", "＇",
         ],
     )
     .or_else(|| letters(input, &["arcmins", "arcmin.", "arcmin", "amin", "p"]))

@@ -7,6 +7,8 @@
 
 pub mod angle;
 mod assemble;
+pub mod clock;
+pub mod date;
 pub mod equinox;
 mod evidence;
 mod fold;
@@ -32,5 +34,6 @@ pub mod text;
 pub mod uncertainty;
 pub mod words;
 mod wrap;
+pub mod zone;
 
 pub use assemble::read;

@@ -1,6 +1,7 @@
 //! Unsigned decimal numbers and signs, digit for digit.
 
 use super::text::{Text, is_blank};
+use super::words::{Word, word};
 use crate::report::{Number, Sign};
 use crate::span::Spanned;
 use nom::IResult;
@@ -82,7 +83,7 @@ fn of_digits(whole: &str, places: &str) -> Number {
     }
 }
 
-/// A sign: `+`, a hyphen or any dash that stands for it, `+/-`, `±`; blanks after it belong to it.
+/// A sign: `+`, a hyphen or any dash that stands for it, `+/-`, `±`, "minus" and "plus" in words; blanks after it belong to it.
 pub fn sign(input: Text<'_>) -> Parsed<'_, Spanned<Sign>> {
     let s = input.as_str();
     let (length, value) = if s.starts_with("+/-") || s.starts_with("+/−") {
@@ -94,12 +95,42 @@ pub fn sign(input: Text<'_>) -> Parsed<'_, Spanned<Sign>> {
             Some('+' | '＋') => (s.chars().next().map_or(1, char::len_utf8), Sign::Plus),
             Some(c) if is_dash(c) => (c.len_utf8(), Sign::Minus),
             Some('±') => ('±'.len_utf8(), Sign::Either),
-            _ => return no(input),
+            // a long dash is a minus only directly before a digit
+            Some('—') if digit_at(&s['—'.len_utf8()..]) => ('—'.len_utf8(), Sign::Minus),
+            _ => match written_sign(input) {
+                Some(found) => found,
+                None => return no(input),
+            },
         }
     };
     let rest = input.skip(length);
     let span = input.span_to(rest);
     Ok((rest.skip_blanks(), Spanned::new(value, span)))
+}
+
+fn digit_at(s: &str) -> bool {
+    s.starts_with(|c: char| c.is_ascii_digit())
+}
+
+/// `minus 22`, `plus 22` in any of the languages, and the minus of HTML.
+fn written_sign(input: Text<'_>) -> Option<(usize, Sign)> {
+    let s = input.as_str();
+    if let Some(entity) = ["&minus;", "&#8722;", "&#x2212;"]
+        .iter()
+        .find(|e| s.starts_with(**e))
+    {
+        return Some((entity.len(), Sign::Minus));
+    }
+    if !input.peek()?.is_alphabetic() || input.before().is_some_and(char::is_alphanumeric) {
+        return None;
+    }
+    let (rest, sign) = word(input, |w| match w {
+        Word::Minus => Some(Sign::Minus),
+        Word::Plus => Some(Sign::Plus),
+        _ => None,
+    })?;
+    let after = rest.skip_blanks();
+    (after.at() > rest.at() && digit_at(after.as_str())).then(|| (rest.at() - input.at(), sign))
 }
 
 /// A dash that can stand for a minus: hyphen, minus, en dash, figure dash, hyphens of other codes.

@@ -218,6 +218,7 @@ impl Cells {
                     let i = InstantWritten {
                         date: Some(d),
                         clock: None,
+                        clock_unread: None,
                         zone: None,
                         until: None,
                         plus_s: None,
@@ -484,6 +485,7 @@ impl Cells {
                     self.date = Some(InstantWritten {
                         date: None,
                         clock: Some(c),
+                        clock_unread: None,
                         zone: z,
                         until: None,
                         plus_s: None,

@@ -3,7 +3,8 @@
 use super::angle::glued;
 use super::marks::double_prime;
 use super::number::{Parsed, is_dash, no, number, part_gap, sign};
-use super::text::Text;
+use super::text::{Text, is_blank};
+use super::words::{Word, word};
 use crate::report::{Angle, Mark, Number, Part, Sign};
 use crate::span::{Span, Spanned};
 
@@ -33,6 +34,9 @@ pub fn run(input: Text<'_>) -> Parsed<'_, Run> {
         }
         Err(_) => (input, None),
     };
+    if after_misread_digits(input.behind()) {
+        return no(input);
+    }
     let mut numbers = Vec::new();
     let mut rest = rest;
     loop {
@@ -45,8 +49,16 @@ pub fn run(input: Text<'_>) -> Parsed<'_, Run> {
             }
             break;
         }
+        // "1 2013 Oct 13.3": the year belongs to the date after it
+        if !numbers.is_empty() && year_of_a_date(value, after) {
+            break;
+        }
         numbers.push((value, rest.span_to(after)));
         let Ok((next, ())) = part_gap(after) else {
+            // "05 l2 13": a field that was mistyped must not be skipped
+            if after.peek() == Some(' ') && misread_digits(after.skip_blanks().as_str()) {
+                return no(input);
+            }
             break;
         };
         if numbers.len() == 9 {
@@ -70,6 +82,46 @@ pub fn run(input: Text<'_>) -> Parsed<'_, Run> {
             span: Span::new(s.map_or(last_start(input), |s| s.span.start), last.end),
         },
     ))
+}
+
+/// Two characters of a field, one a digit and the other a letter typed for one: `o5`, `l2`, `O4`, `1O`.
+fn misread_digits(s: &str) -> bool {
+    let mut c = s.chars();
+    let (Some(a), Some(b), next) = (c.next(), c.next(), c.next()) else {
+        return false;
+    };
+    let letter = |c: char| matches!(c, 'o' | 'O' | 'l' | 'I');
+    (letter(a) && b.is_ascii_digit() || a.is_ascii_digit() && letter(b))
+        && !next.is_some_and(char::is_alphanumeric)
+}
+
+/// The fields before, back to one that was mistyped: what is left of "o5 12 13" is no angle.
+fn after_misread_digits(behind: &str) -> bool {
+    let line = behind.rsplit('\n').next().unwrap_or("");
+    if !line.ends_with(' ') {
+        return false;
+    }
+    for field in line.trim_end().rsplit(' ').take(2) {
+        if misread_digits(field.trim_start_matches(['+', '-'])) {
+            return true;
+        }
+        if field.len() > 2 || !field.bytes().all(|b| b.is_ascii_digit()) {
+            return false;
+        }
+    }
+    false
+}
+
+/// Four digits that a month in words follows.
+fn year_of_a_date(value: Number, after: Text<'_>) -> bool {
+    value.whole_digits == 4
+        && value.places == 0
+        && (1500..=2400).contains(&value.mantissa)
+        && after.peek().is_some_and(is_blank)
+        && word(after.skip_blanks(), |w| {
+            matches!(w, Word::Month(_)).then_some(())
+        })
+        .is_some_and(|(r, ())| r.skip_blanks().peek().is_some_and(|c| c.is_ascii_digit()))
 }
 
 fn last_start(input: Text<'_>) -> usize {

@@ -162,6 +162,7 @@ impl<'t> Gatherer<'_, 't> {
                     self.out.instants.push(InstantWritten {
                         date: None,
                         clock: Some(clock),
+                        clock_unread: None,
                         zone,
                         until: None,
                         plus_s: None,

@@ -192,6 +192,7 @@ fn carried_dates(head: &Head, rows: &mut [Row]) {
                     until: None,
                     plus_s: None,
                     weekday: None,
+                    clock_unread: None,
                     span,
                 },
             );

@@ -75,6 +75,11 @@ impl<'a> Text<'a> {
         self.whole.get(..self.start)?.chars().next_back()
     }
 
+    /// All the text before the window.
+    pub fn behind(self) -> &'a str {
+        self.whole.get(..self.start).unwrap_or("")
+    }
+
     /// The window without its first `bytes` bytes.
     pub fn skip(self, bytes: usize) -> Text<'a> {
         Text {

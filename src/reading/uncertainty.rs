@@ -1,8 +1,9 @@
-//! Uncertainties written after a number: `+/- 0.03`, `± 0.4″`, `(+1.1, -0.7)`. Read so that they are not taken for a coordinate.
+//! Uncertainties written after a number: `+/- 0.03`, `± 0.4″`, `(+1.1, -0.7)`, `[0.03]`, `(error 2 arcsec)`. Read so that they are not taken for a coordinate.
 
 use super::marks::{degree_mark, double_prime, minute_letter, prime, second_letter};
-use super::number::{Parsed, is_dash, no, number};
+use super::number::{Parsed, decimals_after_mark, is_dash, no, number};
 use super::text::Text;
+use super::words::{Word, says};
 use crate::report::Mark;
 use nom::Parser;
 use nom::branch::alt;
@@ -18,7 +19,7 @@ pub struct Uncertainty {
 
 /// An uncertainty.
 pub fn uncertainty(input: Text<'_>) -> Parsed<'_, Uncertainty> {
-    alt((plus_minus, asymmetric)).parse(input)
+    alt((plus_minus, asymmetric, bracketed)).parse(input)
 }
 
 fn plus_minus(input: Text<'_>) -> Parsed<'_, Uncertainty> {
@@ -87,6 +88,50 @@ fn asymmetric(input: Text<'_>) -> Parsed<'_, Uncertainty> {
             Ok((rest.skip(i + 1), Uncertainty { value, mark }))
         }
         _ => no(input),
+    }
+}
+
+/// `[0.03]`, `(+/- 3")`, `(error 2 arcsec)`, `(m.e. 0s.02)`, and the last digits' own `(2)` glued to them.
+fn bracketed(input: Text<'_>) -> Parsed<'_, Uncertainty> {
+    let close = match input.peek() {
+        Some('(') => ')',
+        Some('[') => ']',
+        _ => return no(input),
+    };
+    let inside = input.skip(1).skip_blanks();
+    let end = |r: Text<'_>| r.skip_blanks().peek() == Some(close);
+    if let Ok((rest, found)) = plus_minus(inside) {
+        return if end(rest) {
+            Ok((rest.skip_blanks().skip(1), found))
+        } else {
+            no(input)
+        };
+    }
+    let glued = input.before().is_some_and(|c| c.is_ascii_digit());
+    let named = says(inside, Word::Uncertainty);
+    let mut rest = named.map_or(inside, |r| r.skip_blanks());
+    while named.is_some() && rest.peek().is_some_and(|c| "=:±~".contains(c)) {
+        rest = rest
+            .skip(rest.peek().map_or(1, char::len_utf8))
+            .skip_blanks();
+    }
+    let (after, value) = number(rest)?;
+    let plain = glued && value.places == 0 && value.whole_digits <= 2
+        || close == ']' && value.places > 0 && value.value() < 10.0;
+    if named.is_none() && !plain {
+        return no(input);
+    }
+    let (after, mark) = unit(after);
+    let (after, value) = if mark == Mark::None {
+        (after, value)
+    } else {
+        decimals_after_mark(value, after)
+    };
+    if end(after) {
+        let value = value.value();
+        Ok((after.skip_blanks().skip(1), Uncertainty { value, mark }))
+    } else {
+        no(input)
     }
 }
 

@@ -85,6 +85,8 @@ pub enum Word {
     Feet,
     FromSouth,
     WestPositive,
+    Minus,
+    Plus,
 }
 
 /// One line of the word table.

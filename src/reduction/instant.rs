@@ -45,8 +45,13 @@ pub fn of(written: &InstantWritten, site: Option<&SiteMeant>, beside: Option<&Zo
     let Some(date) = &written.date else {
         return Err(InstantTrouble::DateMissing);
     };
+    if let Some(unread) = written.clock_unread {
+        // the day alone would be taken for midnight
+        return Err(InstantTrouble::ClockUnread(unread));
+    }
     let place = Place { site, beside };
     match date.value {
+        DateWritten::Calendar { year_digits: 0, .. } => Err(InstantTrouble::YearMissing),
         DateWritten::Julian { number, count } => julian(number, count, written),
         DateWritten::Calendar {
             year,
@@ -92,8 +97,16 @@ fn julian(number: Number, count: JulianCount, written: &InstantWritten) -> Resol
         .unwrap_or(u64::MAX);
     let whole = (number.mantissa / scale) as f64;
     let part = (number.mantissa % scale) as f64 / scale as f64;
+    if count == JulianCount::Short
+        || count == JulianCount::Jd && (10_000.0..100_000.0).contains(&whole)
+    {
+        return doubtful(format!(
+            "JD {} can be reduced (JD - 2400000) or modified (MJD), and the two begin 12 hours apart",
+            number.value()
+        ));
+    }
     let jd = match count {
-        JulianCount::Jd | JulianCount::Hjd | JulianCount::Bjd => (whole, part),
+        JulianCount::Jd | JulianCount::Short | JulianCount::Hjd | JulianCount::Bjd => (whole, part),
         // HJD and BJD are often written without their first digits as well
         JulianCount::Reduced => (whole + 2_400_000.0, part),
         JulianCount::Mjd => (whole + time::MJD_ZERO, part),
@@ -198,7 +211,7 @@ fn calendar(date: Date, written: &InstantWritten, place: Place) -> Resolved {
         let (end, _) = clock_seconds(until)?;
         let end = if end < start { end + DAY_S } else { end };
         seconds = (start + end) / 2.0;
-        step_s = step_s.max(clock_step(until));
+        step_s = step_s.max(clock_step(until)).max((end - start) / 2.0);
     }
     let Some(zone) = zone else {
         return Err(InstantTrouble::ZoneMissing);
@@ -442,7 +455,25 @@ impl Moment {
         }
     }
 
+    /// "ET" is ephemeris time, and in North America the clock of the east as well.
+    fn ephemeris_or_eastern(self, place: Place) -> Result<(f64, f64), InstantTrouble> {
+        let american = |s: &SiteMeant| match &s.zone {
+            Some(name) => name.starts_with("America/") || name.starts_with("US/"),
+            None => {
+                (24.0..60.0).contains(&s.latitude_deg) && (-100.0..-60.0).contains(&s.longitude_deg)
+            }
+        };
+        if place.site.is_some_and(american) {
+            doubtful("ET can mean ephemeris time (TT) or US Eastern Time")
+        } else {
+            self.utc(&Zone::Terrestrial, place)
+        }
+    }
+
     fn by_abbreviation(self, letters: &str, place: Place) -> Result<(f64, f64), InstantTrouble> {
+        if letters == "ET" {
+            return self.ephemeris_or_eastern(place);
+        }
         let civil = self.civil()?;
         let known = zones::meanings(letters);
         let own = place.site.and_then(|s| s.zone.as_deref());

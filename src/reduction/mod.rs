@@ -67,6 +67,9 @@ pub fn mean_by(report: &Report, house: &House, to: Frame, almanac: &Almanac) -> 
     meant
 }
 
+/// An instant known to no better than this says nothing of the horizon, seconds.
+const HALF_DAY_S: f64 = 43_200.0;
+
 /// The instant and the site of a report as the sky needs them, each looked up when first asked for, and once.
 pub struct Sky<'a> {
     /// UTC of the observation, however doubtful its hour.
@@ -87,7 +90,10 @@ impl<'a> Sky<'a> {
                 .instant
                 .map(|i| i.utc)
                 .filter(|&utc| Moment::is_computable(utc)),
-            sure: meant.instant_trouble.is_none() && meant.site_trouble.is_none(),
+            // a date alone is no time of the night
+            sure: meant.instant_trouble.is_none()
+                && meant.site_trouble.is_none()
+                && meant.instant.is_none_or(|i| i.step_s < HALF_DAY_S),
             ground: meant.site.as_ref().map(|s| Ground {
                 latitude_deg: s.latitude_deg,
                 longitude_deg: s.longitude_deg,

@@ -2,7 +2,7 @@
 
 use crate::house::angle::wrap_longitude;
 use crate::house::{House, RegisteredSite};
-use crate::report::{Angle, Report, Sign, SiteMeant, SiteTrouble, SiteWritten, Zone};
+use crate::report::{Angle, AngleUnit, Report, Sign, SiteMeant, SiteTrouble, SiteWritten, Zone};
 
 /// Written coordinates may differ from the register's by this many of their own steps, and one of the register's.
 const STEPS_APART: f64 = 3.0;
@@ -109,7 +109,10 @@ fn coordinates(
     latitude: &Angle,
     longitude: &Angle,
 ) -> Result<(f64, f64, f64), SiteTrouble> {
-    let (lat, lon) = (latitude.value(), longitude.value());
+    // a longitude in time: 24 hours to the circle
+    let in_time = longitude.marked_unit() == Some(AngleUnit::Hours);
+    let scale = if in_time { 15.0 } else { 1.0 };
+    let (lat, lon) = (latitude.value(), longitude.value() * scale);
     let overfull = |angle: &Angle| {
         angle
             .parts()
@@ -119,6 +122,9 @@ fn coordinates(
     };
     if lat.abs() > 90.0 || lon.abs() > 360.0 || overfull(latitude) || overfull(longitude) {
         return Err(SiteTrouble::OutOfRange);
+    }
+    if contradicts(latitude) || contradicts(longitude) {
+        return Err(SiteTrouble::HemisphereUnclear);
     }
     if !written.signed_field && hemisphere_unclear(written, latitude, longitude) {
         return Err(SiteTrouble::HemisphereUnclear);
@@ -131,8 +137,14 @@ fn coordinates(
     Ok((
         lat,
         wrap_longitude(lon),
-        latitude.step().max(longitude.step()),
+        latitude.step().max(longitude.step() * scale),
     ))
+}
+
+/// A minus says south or west, and the letter north or east: one of the two is wrong.
+fn contradicts(angle: &Angle) -> bool {
+    matches!(angle.sign, Some(s) if s.value == Sign::Minus)
+        && matches!(angle.compass, Some(c) if c.value.sign() > 0.0)
 }
 
 /// In free text a plain number counts as positive only beside a signed partner (`-33.2, 149.1`), never beside a lettered

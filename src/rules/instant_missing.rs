@@ -43,6 +43,13 @@ fn check(case: &Case, out: &mut Findings) {
             format!("The time {} has no date.", case.quote(span)),
             "Ask for the date.",
         );
+    } else if case.meant.instant_trouble == Some(InstantTrouble::YearMissing) {
+        let span = case.when_span();
+        out.add(
+            span,
+            format!("The date {} has no year.", case.quote(span)),
+            "Ask for the year.",
+        );
     } else if case.report.instants.is_empty()
         && let Some(span) = case.site_span()
     {

@@ -5,7 +5,7 @@
 //!
 //! ## What is asked
 //! Whether the report's own clock time says UT, a scale, an offset or a zone; "local time" needs a zone beside the site or
-//! in the register.
+//! in the register. A time that cannot be read is asked for too: the day alone would be taken for its midnight.
 //!
 //! ## Formula
 //! UT = local time − offset.
@@ -58,6 +58,13 @@ fn check(case: &Case, out: &mut Findings) {
                     case.quote(span)
                 ),
                 "Ask for UT, or give the site's zone beside it or in the register.",
+            );
+        }
+        Some(InstantTrouble::ClockUnread(span)) => {
+            out.add(
+                span,
+                format!("The time {} could not be read.", case.quote(span)),
+                "Ask for the time in figures, hours:minutes, with UT or its zone.",
             );
         }
         _ => {}

@@ -428,6 +428,7 @@ fn instant(text: &str, from: usize, to: usize) -> Option<InstantWritten> {
     let mut written = InstantWritten {
         date: None,
         clock: None,
+        clock_unread: None,
         zone: None,
         until: None,
         plus_s: None,
