@@ -9,6 +9,7 @@ pub mod angle;
 mod assemble;
 pub mod equinox;
 mod evidence;
+mod fields;
 mod fold;
 mod forms;
 pub mod instant;

@@ -138,6 +138,13 @@ pub fn rows_from(sheet: &Sheet, head: &Head, from: usize, end: usize) -> Vec<Row
         }) {
             continue;
         }
+        // a comment among the rows of a file
+        if matches!(head.layout, Layout::Delimited(',' | ';' | '\t'))
+            && words.starts_with('#')
+            && !words[1..].starts_with(|c: char| c.is_ascii_digit())
+        {
+            continue;
+        }
         // the head repeated, or another one
         if self::head(sheet, line, end).is_some() {
             break;
@@ -279,7 +286,7 @@ fn trimmed(text: &str, span: Span) -> Span {
 
 impl Head {
     /// What a head's cell names; `None` where the line can be no head (it holds a number that is no equinox).
-    fn column(&mut self, text: &str, cell: Span) -> Option<ColumnHead> {
+    pub(super) fn column(&mut self, text: &str, cell: Span) -> Option<ColumnHead> {
         let mut words = Vec::new();
         atoms(Text::window(text, cell), 0, &mut false, &mut words);
         let mut column = Column::Note;
