@@ -1,5 +1,6 @@
 //! Assembly: positions and statements become reports; each report takes what its own line says, then its block, then what stands.
 
+use super::fields::{self, Piece};
 use super::head::Head;
 use super::names::new_word_in;
 use super::parts::{Part, Scene, parts};
@@ -27,8 +28,23 @@ pub fn read(sheet: &Sheet) -> Vec<Report> {
     };
     let blocks = sheet.blocks();
     let mut head: Option<Head> = None;
-    for block in blocks {
-        reader.block(block, &mut head);
+    let mut turns = sheet.turns().iter().peekable();
+    for piece in fields::pieces(sheet, blocks) {
+        let begins = match &piece {
+            Piece::Words(block) | Piece::Items(_, _, block) => block.span.start,
+        };
+        // another person speaks
+        while let Some(turn) = turns.next_if(|t| t.at <= begins) {
+            if turn.fresh {
+                reader.standing = Standing::default();
+                head = None;
+            }
+            reader.standing.observer.clone_from(&turn.observer);
+        }
+        match piece {
+            Piece::Words(block) => reader.block(block, &mut head),
+            Piece::Items(head, rows, block) => reader.table(&head, &rows, block),
+        }
     }
     // "all positions …" said at the end of a sheet holds for what stood before it
     if let Some(tag) = reader.standing.whole_sheet {

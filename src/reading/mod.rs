@@ -11,6 +11,7 @@ pub mod clock;
 pub mod date;
 pub mod equinox;
 mod evidence;
+mod fields;
 mod fold;
 mod forms;
 mod head;

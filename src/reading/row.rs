@@ -99,7 +99,8 @@ struct Cells {
     unread: Option<Span>,
 }
 
-fn part(
+/// One object's cells, each with the head of its column, as a row.
+pub(super) fn part(
     text: &str,
     head: &Head,
     line: usize,
