@@ -593,7 +593,8 @@ pub enum System {
     Mean,
     /// Geocentric apparent, true equator and equinox of date
     Apparent,
-    /// Topocentric hour angle and declination, true equator of date
+    /// Hour angle and declination of the geocentric apparent place, true equator of date: sidereal time less right
+    /// ascension, without diurnal aberration and parallax
     HourAngle,
     /// Topocentric azimuth and altitude
     Horizontal,
