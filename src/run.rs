@@ -4,6 +4,7 @@ use crate::house::{self, House, HouseError};
 use crate::report::{Examined, Finding, Frame};
 use crate::rules::{self, Selection};
 use crate::sheet::Sheet;
+use crate::sky::almanac::Almanac;
 use crate::{reading, reduction};
 use std::collections::{HashMap, HashSet};
 use std::ffi::OsStr;
@@ -24,11 +25,20 @@ pub fn examine_sheet(
     now_utc: (f64, f64),
     selection: &Selection,
 ) -> Vec<Examined> {
+    let almanac = Almanac::new();
+    let desk = rules::Desk {
+        house,
+        to,
+        now_utc,
+        text: &sheet.text,
+        selection,
+        almanac: &almanac,
+    };
     reading::read(sheet)
         .into_iter()
         .map(|report| {
-            let meant = reduction::mean(&report, house, to);
-            rules::examine(report, meant, house, to, now_utc, &sheet.text, selection)
+            let meant = reduction::mean_by(&report, house, to, &almanac);
+            desk.examine(report, meant)
         })
         .collect()
 }

@@ -32,7 +32,9 @@ fn sentences_mean_what_they_were_made_of() {
                     if let Some((what, found)) = s.disagreement() {
                         note(what, format!("{:?}: {found}", s.text));
                     }
-                    if let Some(found) = s.mutation_kept(&mut Dice(seed ^ n)) {
+                    if n % 4 < 2
+                        && let Some(found) = s.mutation_kept(&mut Dice(seed ^ n))
+                    {
                         note("old value kept", found);
                     }
                 }

@@ -25,7 +25,7 @@
 //! ## What to do
 //! Ask whether the known object was told apart from the new one. To let it pass: `[stet known-object-here: reason]`.
 
-use super::common::identity::{Known, body_name, ground, here, julian_year, named};
+use super::common::identity::{Known, body_name, ground, here, julian_year};
 use super::common::words::apart;
 use super::{Case, Findings, Rule};
 use crate::report::{Role, Weight};
@@ -47,7 +47,7 @@ fn check(case: &Case, out: &mut Findings) {
     else {
         return;
     };
-    if case.report.role != Role::Measured || named(case.report, case.house).is_some() {
+    if case.report.role != Role::Measured || case.named.is_some() {
         return;
     }
     let step = reduced.step_arcsec;

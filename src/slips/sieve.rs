@@ -5,7 +5,6 @@
 
 use super::readings::{Changes, Reading};
 use crate::report::{AngleUnit, Equinox, HorizonQuantity, Meant, PositionKind, System};
-use crate::rules::identity::named;
 use crate::rules::{Case, Sisters, angles};
 use crate::sky::{Direction, separation_deg};
 
@@ -47,13 +46,11 @@ impl<'a> Sieve<'a> {
                 _ => None,
             })
             .collect();
-        let object = named(case.report, case.house)
-            .and_then(|known| known.expected(case))
-            .map(|e| {
-                let reach = e.radius_arcsec.max(120.0) + 2.0 * e.slack_arcsec + 600.0;
-                let step = meant.reduced.map_or(0.0, |r| 3.0 * r.step_arcsec);
-                (e.icrs, (reach + step) / 3600.0 + slack(on_icrs))
-            });
+        let object = case.named.and_then(|known| known.expected(case)).map(|e| {
+            let reach = e.radius_arcsec.max(120.0) + 2.0 * e.slack_arcsec + 600.0;
+            let step = meant.reduced.map_or(0.0, |r| 3.0 * r.step_arcsec);
+            (e.icrs, (reach + step) / 3600.0 + slack(on_icrs))
+        });
         Sieve {
             case: *case,
             sisters,

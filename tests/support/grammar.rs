@@ -14,24 +14,40 @@ pub fn vm() -> &'static pest_vm::Vm {
     VM.get_or_init(made)
 }
 
-/// The words are checked by themselves and stand in the grammar by name: checked as one, the two take half a minute.
+/// pest_meta checks every rule through all it refers to, time and again: half a minute for the whole. So each file, and each
+/// rule of words, is checked by itself, with the rules of the others standing in it by name only.
 fn made() -> pest_vm::Vm {
+    let mut pieces: Vec<String> = files().into_iter().map(|(_, source)| source).collect();
     let words = word_rules();
-    let mut text = String::new();
-    let mut names = BTreeSet::new();
-    for (name, _) in words.lines().filter_map(|l| l.split_once(" = ")) {
-        if name.chars().all(|c| c.is_ascii_alphanumeric() || c == '_') {
-            writeln!(text, "{name} = {{ \"word\" }}").expect("to a string");
-            names.insert(name.to_string());
+    pieces.extend(
+        words
+            .split("}\n")
+            .filter(|r| r.contains('='))
+            .map(|r| format!("{r}}}\n")),
+    );
+    let names: Vec<BTreeSet<&str>> = pieces.iter().map(|p| defined(p)).collect();
+    let mut rules = Vec::new();
+    for (i, piece) in pieces.iter().enumerate() {
+        let mut text = piece.clone();
+        for other in names.iter().flatten().filter(|n| !names[i].contains(*n)) {
+            writeln!(text, "{other} = {{ \"{other}\" }}").expect("to a string");
         }
+        rules.extend(
+            optimized(&text)
+                .into_iter()
+                .filter(|r| names[i].contains(&*r.name)),
+        );
     }
-    for (_, source) in files() {
-        text.push_str(&source);
-    }
-    let mut rules = optimized(&text);
-    rules.retain(|r| !names.contains(&r.name));
-    rules.extend(optimized(&words));
     pest_vm::Vm::new(rules)
+}
+
+/// The names of the rules that a piece defines.
+fn defined(text: &str) -> BTreeSet<&str> {
+    text.lines()
+        .filter_map(|l| l.split_once('='))
+        .map(|(name, _)| name.trim_end())
+        .filter(|n| !n.is_empty() && n.chars().all(|c| c.is_ascii_alphanumeric() || c == '_'))
+        .collect()
 }
 
 fn optimized(text: &str) -> Vec<pest_meta::optimizer::OptimizedRule> {

@@ -3,7 +3,7 @@
 use crate::house::{House, KnownObject};
 use crate::report::{Meant, Report};
 use crate::rules::Case;
-use crate::sky::bodies::{self, Body};
+use crate::sky::bodies::Body;
 use crate::sky::catalogue::{self, Entry};
 use crate::sky::{Direction, Ground, separation_deg};
 
@@ -160,7 +160,8 @@ impl Known<'_> {
                 } else {
                     0.0
                 };
-                let place = bodies::place(*body, super::words::later(instant.utc, middle), ground);
+                let at = super::words::later(instant.utc, middle);
+                let place = case.almanac.view(at, ground).place(*body);
                 let light_time_s = if instant.heliocentric { 500.0 } else { 0.0 };
                 let motion =
                     place.motion_arcsec_per_h * (instant.step_s - middle + light_time_s) / 3600.0;
@@ -198,8 +199,5 @@ pub fn here(meant: &Meant) -> Option<Direction> {
 
 /// Does the report's name mean this body?
 pub fn is_body(case: &Case, wanted: Body) -> bool {
-    case.report
-        .object
-        .as_ref()
-        .is_some_and(|name| body(&name.value) == Some(wanted))
+    matches!(case.named, Some(Known::Body(body)) if body == wanted)
 }

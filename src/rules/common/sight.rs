@@ -143,7 +143,9 @@ pub fn when_up(case: &Case, icrs: Direction, ground: Ground) -> String {
     let Some(instant) = case.meant.instant else {
         return String::new();
     };
-    match horizon::up(icrs, instant.utc, ground, -horizon_allowance_deg(case)) {
+    let view = case.almanac.view(instant.utc, Some(ground));
+    let station = view.station.as_ref().expect("a view from the ground");
+    match horizon::up_at(icrs, station, -horizon_allowance_deg(case)) {
         horizon::Up::Always => "it is up all day long".to_string(),
         horizon::Up::Never => "it does not rise at all that day".to_string(),
         horizon::Up::Between(spans) if spans.is_empty() => {
