@@ -299,7 +299,11 @@ fn one(
     }
     let sheet = match Sheet::decode(name, &bytes) {
         Ok(sheet) => sheet,
-        Err(e) if walked => return run.note(&shown, format!("passed over: {e}")),
+        Err(e) if walked => {
+            let words = e.to_string();
+            let what = words.split("; ").next().unwrap_or_default();
+            return run.note(&shown, format!("passed over: {what}"));
+        }
         Err(e) => {
             // the error holds what is wrong, and after it what to do
             let words = e.to_string();

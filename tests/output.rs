@@ -530,8 +530,8 @@ fn verdicts_stand_in_words_and_the_summary_counts_them() {
     let mut out = Vec::new();
     screen_text::write(&run, PLAIN, &mut out).unwrap();
     let shown = String::from_utf8(out).unwrap();
-    assert!(shown.contains("REJECT line 7: Suspect 13: "), "{shown}");
-    assert!(shown.contains("query  line 12: "), "{shown}");
+    assert!(shown.contains("REJECT line 7, Suspect 13: "), "{shown}");
+    assert!(shown.contains("query  line 12, "), "{shown}");
     assert!(!shown.contains('\u{1b}'));
     assert!(shown.starts_with("invented.txt\n"), "{shown}");
     assert!(

@@ -109,6 +109,8 @@ pub fn run(arguments: impl IntoIterator<Item = OsString>) -> u8 {
             {
                 error.remove(ContextKind::SuggestedArg);
             }
+            // "to pass it as a value": no sheet is called so
+            error.remove(ContextKind::Suggested);
             // a closed pipe is no reason to complain
             let _ = error.print();
             return if error.use_stderr() {

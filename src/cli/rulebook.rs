@@ -88,18 +88,22 @@ impl Piece<'_> {
     }
 }
 
+/// A line of a page at least this long goes on in the next; a shorter one ends: a formula, the end of a paragraph.
+const FULL_LINE: usize = 90;
+
 /// The paragraphs of a page joined, its headings, lists and examples line by line, the fences of examples left out.
 fn pieces(page: &str) -> Vec<Piece<'_>> {
     let mut pieces: Vec<Piece> = Vec::new();
-    let mut example = false;
+    let (mut example, mut goes_on) = (false, false);
     for line in page.lines() {
         if line.starts_with("```") {
             example = !example;
             continue;
         }
         let words = !example && !line.is_empty() && !line.starts_with(['#', '-', '|', ' ', '>']);
+        let joined = std::mem::replace(&mut goes_on, words && line.chars().count() >= FULL_LINE);
         match (words, pieces.last_mut()) {
-            (true, Some(Piece::Words(before))) => {
+            (true, Some(Piece::Words(before))) if joined => {
                 before.push(' ');
                 before.push_str(line);
             }

@@ -63,11 +63,12 @@ pub fn load(path: &Path) -> Result<List, (String, &'static str)> {
 
 /// Reads the text of an object list.
 pub fn parse(text: String) -> List {
-    let mut list = List {
-        text,
-        ..List::default()
+    // a byte order mark would shift every place by three
+    let text = match text.strip_prefix('\u{feff}') {
+        Some(rest) => rest.to_owned(),
+        None => text,
     };
-    let text = std::mem::take(&mut list.text);
+    let mut list = List::default();
     rows(&text, &mut list);
     list.text = text;
     list
@@ -79,8 +80,7 @@ fn rows(text: &str, list: &mut List) {
         .flexible(true)
         .has_headers(false)
         .comment(Some(b'#'))
-        .from_reader(text.trim_start_matches('\u{feff}').as_bytes());
-    let mark = text.len() - text.trim_start_matches('\u{feff}').len();
+        .from_reader(text.as_bytes());
     let mut head: Option<Columns> = None;
     for row in reader.records() {
         let row = match row {
@@ -90,7 +90,7 @@ fn rows(text: &str, list: &mut List) {
         if row.iter().all(str::is_empty) {
             continue;
         }
-        let start = mark + row.position().map_or(0, |p| p.byte() as usize);
+        let start = row.position().map_or(0, |p| p.byte() as usize);
         let cells = Cells::of(text, start, &row);
         match &head {
             None => match Columns::of(&cells, list) {

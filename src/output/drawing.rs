@@ -14,7 +14,7 @@ use std::io::{self, Write};
 
 /// Stands at the head of a snippet.
 const HEAD: char = '\u{1}';
-/// Stands between a line's number and its text.
+/// Stands between a line's number and its text, and leads from a mark down to its word.
 const GUTTER: char = '\u{2}';
 /// Stands where the word for a mark begins, and at the foot of a snippet.
 const WORD: char = '\u{3}';
@@ -88,7 +88,7 @@ fn characters() -> ThemeCharacters {
         hbar: ' ',
         vbar: GUTTER,
         xbar: ' ',
-        vbar_break: ' ',
+        vbar_break: GUTTER,
         uarrow: '↑',
         rarrow: ' ',
         ltop: HEAD,

@@ -84,7 +84,7 @@ impl<W: Write> Screen<'_, W> {
             Verdict::Reject => "REJECT",
         };
         let text = format!(
-            "line {line}: {}: {} → {restated}{assumed}",
+            "line {line}, {}: {} → {restated}{assumed}",
             called(report),
             position(report, &sheet.text)
         );
