@@ -1,7 +1,9 @@
 //! The grammar is run: every example beside a production is tried on `grammar/*.pest` and on the nom parser of the same name.
 
 use colure::reading::text::Text;
-use colure::reading::{angle, equinox, instant, marks, number, run, site, stet, uncertainty};
+use colure::reading::{
+    angle, clock, date, equinox, instant, marks, number, run, site, stet, uncertainty, zone,
+};
 use std::collections::{BTreeMap, BTreeSet};
 use std::fs;
 use std::path::{Path, PathBuf};
@@ -48,9 +50,9 @@ const NOM: &[(&str, &str, Taken)] = taken![
     equinox::misspelt_tag,
     instant::instant,
     instant::julian,
-    instant::date,
-    instant::clock,
-    instant::zone,
+    date::date,
+    clock::clock,
+    zone::zone,
     site::site_coordinates,
     site::elevation,
     uncertainty::uncertainty,
@@ -141,6 +143,9 @@ fn productions_and_parsers_have_the_same_names() {
         "marks",
         "angle",
         "equinox",
+        "date",
+        "clock",
+        "zone",
         "instant",
         "site",
         "uncertainty",

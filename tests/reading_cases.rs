@@ -194,3 +194,8 @@ fn every_carrier_is_read_as_told() {
 fn every_instant_and_site_is_read_as_told() {
     hold("instants.txt");
 }
+
+#[test]
+fn every_quantity_is_read_as_told() {
+    hold("quantities.txt");
+}

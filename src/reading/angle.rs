@@ -436,15 +436,14 @@ fn unmarked(input: Text<'_>) -> Parsed<'_, Part> {
     }
 }
 
-/// From a mark to the next number: blanks; after a word also a comma and "and" (`10 hours, 5 minutes and 22 seconds`).
+/// From a mark to the next marked number: blanks, a comma, "and" (`10 hours, 5 minutes and 22 seconds`).
 fn next_part(input: Text<'_>) -> Text<'_> {
     let mut rest = input.skip_blanks();
-    let worded = input.before().is_some_and(char::is_alphabetic);
-    if worded && rest.as_str().starts_with(", ") {
+    if rest.as_str().starts_with(", ") {
         rest = rest.skip(1).skip_blanks();
     }
     let and = ["and ", "und ", "et ", "y ", "e ", "en ", "i "];
-    if worded && let Some(w) = and.iter().find(|w| rest.as_str().starts_with(**w)) {
+    if let Some(w) = and.iter().find(|w| rest.as_str().starts_with(**w)) {
         rest = rest.skip(w.len()).skip_blanks();
     }
     rest

@@ -129,7 +129,10 @@ fn loose_figures(input: Text<'_>, around: Around) -> Option<(Text<'_>, Figures)>
             // 22 h 15, 21 Uhr 15, 22h
             match hour_word(rest) {
                 Some(r) => match after_hour(r) {
-                    Ok((r, m, sec)) if m.whole_digits == 2 => Some((r, [part(s), Some(m), sec])),
+                    Ok((r, m, sec)) if m.whole_digits == 2 => {
+                        let r = says(r.skip_blanks(), Word::Minutes).unwrap_or(r);
+                        Some((r, [part(s), Some(m), sec]))
+                    }
                     _ => Some((r, [part(s), None, None])),
                 },
                 None => Some((rest, [part(s), None, None])),

@@ -5,7 +5,7 @@ use super::number::{Parsed, digits, integer, is_dash, no, number};
 use super::text::Text;
 use super::words::{Word, word};
 use super::zone::zone;
-use crate::report::{DateWritten, Number};
+use crate::report::{DateWritten, Number, Zone};
 use nom::Parser;
 use nom::branch::alt;
 
@@ -160,7 +160,10 @@ fn date_day_first(input: Text<'_>) -> Parsed<'_, DateWritten> {
     let (rest, month) = month(rest)?;
     let written = Written::new(0, 0, month, day).to(to_day);
     let year_at = joint(rest, true);
-    if let Ok((r, year)) = year4(year_at) {
+    // "17.2 mag, 2024-03-05": the year begins a date of its own
+    if let Ok((r, year)) = year4(year_at)
+        && date_year_first(year_at).is_err()
+    {
         return written.of(year, 4).ends(input, r);
     }
     if day.places == 0 && rest.peek().is_some_and(is_dash) {
@@ -234,6 +237,7 @@ fn date_month_first(input: Text<'_>) -> Parsed<'_, DateWritten> {
     let year_at = skip_comma(rest);
     if let Ok((r, year)) = year4(year_at)
         && year_at.at() > rest.at()
+        && date_year_first(year_at).is_err()
     {
         return written.of(year, 4).ends(input, r);
     }
@@ -244,7 +248,10 @@ fn date_month_first(input: Text<'_>) -> Parsed<'_, DateWritten> {
         return written.of(year, 2).ends(input, r);
     }
     let capital = name.starts_with(char::is_uppercase) && name.chars().count() >= 3;
-    let ends = rest.skip_blanks().is_empty();
+    // at the end of a field, or before the numbers of a table's row
+    let ends = skip_comma(rest)
+        .peek()
+        .is_none_or(|c| c.is_ascii_digit());
     let sure = zone_or_clock(rest);
     let yearless = capital
         && !never_yearless(name)
@@ -274,7 +281,7 @@ fn is_dec(name: &str) -> bool {
 
 /// A clock time with its zone, or after decimals a zone, stands next.
 fn zone_or_clock(rest: Text<'_>) -> bool {
-    zone(rest).is_ok_and(|(_, z)| !matches!(z.value, crate::report::Zone::Offset(_)))
+    zone(rest).is_ok_and(|(_, z)| !matches!(z.value, Zone::Offset(_)))
         || clock_after_date(rest, false).is_some_and(|(r, _)| zone(r).is_ok())
 }
 
@@ -453,6 +460,12 @@ fn day(input: Text<'_>) -> Parsed<'_, (Number, Option<u32>)> {
     if day.whole_digits > 2
         || input.as_str()[usize::from(day.whole_digits)..].starts_with(',') && day.places > 0
     {
+        if day.whole_digits <= 2
+            && day.places >= 2
+            && zone(rest).is_ok_and(|(_, z)| !matches!(z.value, Zone::Offset(_)))
+        {
+            return Ok((rest, (day, None)));
+        }
         // "5,2024" is no decimal day
         let (rest, day) = integer(input)?;
         return if day.whole_digits > 2 {

@@ -50,15 +50,16 @@ pub fn run(input: Text<'_>) -> Parsed<'_, Run> {
             break;
         }
         // "1 2013 Oct 13.3": the year belongs to the date after it
-        if !numbers.is_empty() && year_of_a_date(value, after) {
-            break;
+        if year_of_a_date(value, after) {
+            if numbers.is_empty() && s.is_some() {
+                return no(input);
+            }
+            if !numbers.is_empty() {
+                break;
+            }
         }
         numbers.push((value, rest.span_to(after)));
         let Ok((next, ())) = part_gap(after) else {
-            // "05 l2 13": a field that was mistyped must not be skipped
-            if after.peek() == Some(' ') && misread_digits(after.skip_blanks().as_str()) {
-                return no(input);
-            }
             break;
         };
         if numbers.len() == 9 {
@@ -70,6 +71,10 @@ pub fn run(input: Text<'_>) -> Parsed<'_, Run> {
         return no(input);
     };
     let end = input.skip(last.end - input.at());
+    // "05 l2 13": a field that was mistyped must not be skipped
+    if end.peek().is_some_and(is_blank) && misread_digits(end.skip_blanks().as_str()) {
+        return no(input);
+    }
     // -89 02"00': marks exchanged; -89 02 would be a misreading
     if double_prime(end).is_ok_and(|(r, _)| r.peek().is_some_and(|c| c.is_ascii_digit())) {
         return no(input);

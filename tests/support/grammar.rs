@@ -228,6 +228,9 @@ fn word_rules() -> String {
         ("date", &["date"]),
         ("time", &["time"]),
         ("at", &["at"]),
+        ("local_time", &["local-time"]),
+        ("sign", &["minus", "plus"]),
+        ("uncertainty", &["uncertainty"]),
         ("half_day", &["am", "pm"]),
         ("universal", &["universal"]),
         (
