@@ -16,7 +16,7 @@ mod table {
     include!(concat!(env!("OUT_DIR"), "/nutation.rs"));
 }
 
-use table::{LUNISOLAR, LUNISOLAR_BY, PLANETARY, PLANETARY_BY};
+use self::table::{LUNISOLAR, LUNISOLAR_BY, PLANETARY, PLANETARY_BY};
 
 /// 0.1 µas in radians.
 const UNIT_RAD: f64 = TAU / 1_296_000.0 / 1e7;
