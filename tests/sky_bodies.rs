@@ -119,5 +119,6 @@ fn quick_instants_and_courses() {
     println!(
         "off at worst: star {star_off:.3}″, Sun {sun_off:.2}″, courses over a day {course_off:.2}″"
     );
-    assert!(star_off < 0.1 && sun_off < 5.0 && course_off < 10.0);
+    // a leap second within the day is 15″ of hour angle
+    assert!(star_off < 0.1 && sun_off < 5.0 && course_off < 20.0);
 }

@@ -6,9 +6,9 @@
 
 mod names;
 
+use self::names::{GREEK, words};
 use super::icrs::{Motion, moved};
 use super::{Direction, separation_deg};
-use names::{GREEK, words};
 
 /// The tables as the build script lays them out.
 mod table {

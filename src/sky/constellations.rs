@@ -12,7 +12,7 @@ mod table {
     include!(concat!(env!("OUT_DIR"), "/constellations.rs"));
 }
 
-pub use table::NAMES;
+pub use self::table::NAMES;
 
 /// A band of declination: from its lower edge up to the next band's.
 struct Band {

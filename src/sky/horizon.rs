@@ -30,8 +30,8 @@ pub fn place_at(icrs: Direction, station: &Station) -> AltAz {
     }
 }
 
-/// A direction's way over a site within a day or two of an instant, to 2″ a day: what changes slowly (precession, nutation,
-/// aberration) is held, and the Earth turns.
+/// A direction's way over a site within a day or two of an instant, to 5″ a day (15″ more across a leap second): what
+/// changes slowly (precession, nutation, aberration) is held, and the Earth turns.
 #[derive(Clone, Copy, Debug)]
 pub struct Course {
     /// Apparent place at the instant, degrees, and its changes over the span: linear and quadratic.

@@ -1,6 +1,9 @@
 //! Precession and nutation of an instant: IAU 2006/2000A, the terms of ERFA `nut00a` summed several at once.
 //!
-//! Within 1e-5 µas of ERFA `pnm06a`, at a fifth of its cost (`tests/sky_grid.rs`). Tables: `src/sky/data/README.md`.
+//! Within 1e-5 µas of ERFA `pnm06a`, at a fifth of its cost (`tests/sky_series.rs`). Tables: `src/sky/data/README.md`.
+
+// plain indices over arrays of known length: of these the compiler makes vectors
+#![allow(clippy::needless_range_loop)]
 
 use super::series::{BLOCK, sin_cos};
 use super::time::J2000;
@@ -16,7 +19,7 @@ mod table {
     include!(concat!(env!("OUT_DIR"), "/nutation.rs"));
 }
 
-use table::{LUNISOLAR, LUNISOLAR_BY, PLANETARY, PLANETARY_BY};
+use self::table::{LUNISOLAR, LUNISOLAR_BY, PLANETARY, PLANETARY_BY};
 
 /// 0.1 µas in radians.
 const UNIT_RAD: f64 = TAU / 1_296_000.0 / 1e7;

@@ -67,7 +67,7 @@ mod table {
     include!(concat!(env!("OUT_DIR"), "/time.rs"));
 }
 
-use table::{DELTA_T, DELTA_T_FROM, LEAPS};
+use self::table::{DELTA_T, DELTA_T_FROM, LEAPS};
 
 // ---------------------------------------------------------------------------------------------- calendar
 

@@ -11,7 +11,7 @@ use std::path::Path;
 #[path = "../catalogue/names.rs"]
 mod names;
 
-use names::{GREEK, words};
+use self::names::{GREEK, words};
 
 const J2000: f64 = 2_451_545.0;
 
