@@ -249,9 +249,7 @@ fn date_month_first(input: Text<'_>) -> Parsed<'_, DateWritten> {
     }
     let capital = name.starts_with(char::is_uppercase) && name.chars().count() >= 3;
     // at the end of a field, or before the numbers of a table's row
-    let ends = skip_comma(rest)
-        .peek()
-        .is_none_or(|c| c.is_ascii_digit());
+    let ends = skip_comma(rest).peek().is_none_or(|c| c.is_ascii_digit());
     let sure = zone_or_clock(rest);
     let yearless = capital
         && !never_yearless(name)

@@ -115,8 +115,12 @@ pub fn equinox_tag(input: Text<'_>) -> Parsed<'_, Tagged> {
     // "2000 coordinates": a bare year with a word for the frame after it
     if tag == NOTHING {
         if let Ok((after, year)) = bare_year(input)
-            && let Some(done) = says(after.skip_blanks(), Word::Position)
-                .or_else(|| says(after.skip_blanks(), Word::Equinox))
+            && let Some(done) = says(after.skip_blanks(), Word::Position).or_else(|| {
+                // "KT 1975  equinox 2000.0": the name's number is no year of an equinox
+                let done = says(after.skip_blanks(), Word::Equinox)?;
+                let next = done.skip_blanks();
+                (lettered_year(next).is_err() && bare_year(next).is_err()).then_some(done)
+            })
         {
             let tag = EquinoxTag {
                 year: Some(EquinoxYear::Year { letter: None, year }),

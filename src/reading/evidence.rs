@@ -83,6 +83,16 @@ impl Finder<'_, '_> {
             .any(|k| self.atoms[k].means(Word::Galactic) || self.atoms[k].means(Word::Ecliptic))
     }
 
+    /// A month's word right before it: the first number is its day.
+    pub(super) fn month_right_before(&self, i: usize) -> bool {
+        let k = match i.checked_sub(1) {
+            Some(k) if self.atoms[k].is_mark('.') && k > 0 => k - 1,
+            Some(k) => k,
+            None => return false,
+        };
+        matches!(&self.atoms[k].kind, Kind::Word(p) if p.meanings().any(|w| matches!(w, Word::Month(_))) && !p.means(Word::Declination) && !p.means(Word::Magnitude))
+    }
+
     /// A name's word right before it.
     pub(super) fn name_right_before(&self, i: usize) -> bool {
         i > 0

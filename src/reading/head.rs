@@ -46,6 +46,8 @@ pub(super) struct ColumnHead {
     pub span: Span,
     pub tag: Option<Spanned<Tagged>>,
     pub unit: Option<AngleUnit>,
+    /// Its times are universal by its own words.
+    pub universal: bool,
     /// One of several columns that share a coordinate: `h`, `d`, `m`, `s` for its hours, degrees, minutes, seconds.
     pub part: Option<char>,
     /// The hemisphere that the head names.
@@ -127,6 +129,7 @@ impl Head {
         let mut tag_here = None;
         let mut clock_word = false;
         let mut labels = 0;
+        let mut universal = false;
         let mut compass = None;
         let mut base = None;
         let mut year = None;
@@ -170,6 +173,7 @@ impl Head {
                             | Word::ZoneAbbreviation
                             | Word::Atomic
                             | Word::Barycentric => {
+                                universal |= w == Word::Universal;
                                 zone_here =
                                     zone(Text::window(text, Span::new(atom.span.start, cell.end)))
                                         .ok()
@@ -277,6 +281,7 @@ impl Head {
             span: cell,
             tag: tag_here,
             unit,
+            universal,
             part,
             compass,
             base,
@@ -298,6 +303,7 @@ fn shared_column(text: &str, cell: Span) -> Option<ColumnHead> {
             span: cell,
             tag: None,
             unit: None,
+            universal: false,
             part,
             compass: None,
             base: None,

@@ -466,7 +466,12 @@ pub(super) fn position(
 }
 
 /// The last numbers of a run that stands before a signed declination: a serial number or a day may lead it.
-pub(super) fn ra_before(run: &Run, dec_parts: Option<usize>, named: bool) -> Option<Angle> {
+pub(super) fn ra_before(
+    run: &Run,
+    dec_parts: Option<usize>,
+    named: bool,
+    dated: bool,
+) -> Option<Angle> {
     let n = run.numbers.len();
     let hour_ok = |i: usize| {
         run.numbers
@@ -476,6 +481,8 @@ pub(super) fn ra_before(run: &Run, dec_parts: Option<usize>, named: bool) -> Opt
     let from = match n {
         0 => return None,
         1..=2 => 0,
+        // "Mar 05 17 40.2": the day of a month
+        3 if dated => 1,
         // "Suspect 5 18 12.2 -12 04": the number of a name, then hours and minutes
         3 => {
             let name_number = named && run.numbers[2].0.places > 0;

@@ -615,7 +615,15 @@ impl<'t> Finder<'_, 't> {
             _ => None,
         };
         let (ra, _) = match &self.atoms[i].kind {
-            Kind::Run(run) => (ra_before(run, dec_run, self.name_right_before(i))?, i + 1),
+            Kind::Run(run) => (
+                ra_before(
+                    run,
+                    dec_run,
+                    self.name_right_before(i),
+                    self.month_right_before(i),
+                )?,
+                i + 1,
+            ),
             _ => self.angle_at(i, Axis::Ra, None)?,
         };
         let mut h = Gathered::default();

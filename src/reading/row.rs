@@ -90,6 +90,8 @@ struct Cells {
     /// Coordinates in columns of their own for degrees, minutes and seconds: of RA, Dec, latitude, longitude.
     split: [Vec<(char, Number, Option<Sign>, Span)>; 4],
     sign: Option<Spanned<Sign>>,
+    /// The time read stands in a column of universal time.
+    universal: bool,
     /// The column before.
     after: Option<Column>,
     /// A cell for the time holds something else.
@@ -201,7 +203,22 @@ impl Cells {
                 .said
                 .observers
                 .push(Spanned::new(words.to_string(), cell)),
-            Column::Instant | Column::Date | Column::Clock => self.when(input),
+            Column::Instant | Column::Date | Column::Clock => {
+                // universal time before any other date of the row
+                let other = self
+                    .date
+                    .as_ref()
+                    .is_some_and(|d| d.clock.is_some() || column.column == Column::Instant);
+                if column.universal
+                    && !self.universal
+                    && other
+                    && instant(input).is_ok_and(|(_, i)| i.date.is_some())
+                {
+                    self.date = None;
+                }
+                self.universal |= column.universal;
+                self.when(input);
+            }
             Column::Julian(count) => {
                 if let Ok((rest, number)) = super::number::number(input)
                     && rest.is_empty()
@@ -399,6 +416,7 @@ impl Cells {
                 span,
                 tag: None,
                 unit: Some(unit),
+                universal: true,
                 part: None,
                 compass: None,
                 base: None,

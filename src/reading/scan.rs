@@ -155,6 +155,14 @@ fn atom<'a>(rest: Text<'a>, c: char, after_label: bool, awaiting: bool) -> (Text
         }
     }
     if !word_start && !after_label {
+        // "7 14 40S"
+        if matches!(c, 'N' | 'S' | 'E' | 'W')
+            && rest.before().is_some_and(|b| b.is_ascii_digit())
+            && !rest.skip(1).peek().is_some_and(char::is_alphanumeric)
+            && let Some((r, p)) = phrase(rest)
+        {
+            return (r, Kind::Word(p));
+        }
         if c.is_alphanumeric() {
             return plain(rest);
         }

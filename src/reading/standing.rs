@@ -264,12 +264,15 @@ impl Reader<'_> {
         found.sort_by_key(|(i, n)| (!complete(i), *n));
         let zone = said.clock_zone.as_ref().or(self.standing.zone.as_ref());
         for (i, _) in &mut found {
-            if i.zone.is_none()
-                && (i.clock.is_some()
-                    || i.date.is_some_and(
-                        |d| matches!(d.value, DateWritten::Calendar { day, .. } if day.places > 0),
-                    ))
-            {
+            // a Julian date takes a scale that is said (TT, TDB), and else is UTC
+            let julian = matches!(i.date.map(|d| d.value), Some(DateWritten::Julian { .. }));
+            let said = zone.is_some_and(|z| {
+                matches!(
+                    z.value,
+                    Zone::Terrestrial | Zone::Barycentric | Zone::Atomic
+                )
+            });
+            if i.zone.is_none() && i.clock_or_decimals() && (!julian || said) {
                 i.zone = zone.cloned();
             }
         }

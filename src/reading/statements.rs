@@ -258,6 +258,11 @@ impl<'t> Gatherer<'_, 't> {
                     .unwrap_or(self.atoms.len());
             }
         }
+        if is(Word::WestPositive)
+            && let Some(site) = self.out.sites.last_mut()
+        {
+            site.west_positive = true;
+        }
         // latitude and longitude on lines of their own
         if (is(Word::Latitude) || is(Word::Longitude))
             && self.label_mark(i)
