@@ -27,8 +27,7 @@ pub fn angle_hours(input: Text<'_>) -> Parsed<'_, Angle> {
     let (mut rest, hours) = marked(rest, hour_mark)?;
     let mut parts = vec![hours];
     if hours.number.places == 0 {
-        if let Ok((r, minutes)) =
-            marked(next_part(rest), alt((minute_letter, prime, broken_mark)))
+        if let Ok((r, minutes)) = marked(next_part(rest), alt((minute_letter, prime, broken_mark)))
         {
             rest = r;
             parts.push(minutes);
@@ -74,8 +73,7 @@ pub fn angle_degrees(input: Text<'_>) -> Parsed<'_, Angle> {
     // a broken mark alone proves nothing: it must be followed by minutes
     let mut parts = vec![degrees];
     if degrees.number.places == 0 {
-        if let Ok((r, minutes)) =
-            marked(next_part(rest), alt((prime, minute_letter, broken_mark)))
+        if let Ok((r, minutes)) = marked(next_part(rest), alt((prime, minute_letter, broken_mark)))
         {
             rest = r;
             parts.push(minutes);

@@ -149,9 +149,7 @@ fn hour_word(input: Text<'_>) -> Option<Text<'_>> {
         // "20 heure locale": the zone's word
         return says(rest, Word::LocalTime).is_none().then_some(after);
     }
-    let c = rest
-        .peek()
-        .filter(|c| matches!(c, 'h' | 'H' | 'ʰ' | 'u'))?;
+    let c = rest.peek().filter(|c| matches!(c, 'h' | 'H' | 'ʰ' | 'u'))?;
     let after = rest.skip(c.len_utf8());
     (!after.peek().is_some_and(char::is_alphabetic)).then_some(after)
 }
@@ -320,14 +318,27 @@ fn clock_lead(input: Text<'_>, scaled: bool) -> Option<(Text<'_>, bool)> {
 
 /// "From" and "between" before a range of clock times.
 const RANGE_LEADS: &[&str] = &[
-    "from ", "between ", "von ", "zwischen ", "de ", "entre ", "desde ", "dalle ", "tra ", "fra ", "van ",
-    "tussen ", "od ", "między ", "das ",
+    "from ",
+    "between ",
+    "von ",
+    "zwischen ",
+    "de ",
+    "entre ",
+    "desde ",
+    "dalle ",
+    "tra ",
+    "fra ",
+    "van ",
+    "tussen ",
+    "od ",
+    "między ",
+    "das ",
 ];
 
 /// "To" and "and" between the ends of a range.
 const RANGE_TO: &[&str] = &[
-    "to ", "and ", "bis ", "und ", "until ", "till ", "à ", "a ", "et ", "y ", "e ", "tot ", "en ", "até ", "do ", "i ",
-    "hasta ", "alle ", "end ", "ended ", "às ",
+    "to ", "and ", "bis ", "und ", "until ", "till ", "à ", "a ", "et ", "y ", "e ", "tot ", "en ",
+    "até ", "do ", "i ", "hasta ", "alle ", "end ", "ended ", "às ",
 ];
 
 /// The end of a range: `-22:35`, ` to 22:35`, `–22:35`, `, end 22:35`.
@@ -359,7 +370,9 @@ pub(super) fn clock_unread(input: Text<'_>) -> Option<(Text<'_>, Span)> {
         loop {
             let here = rest;
             rest = match rest.peek() {
-                Some(c) if is_blank(c) || ".:'\"′″,;/-_°".contains(c) => rest.skip(c.len_utf8()),
+                Some(c) if is_blank(c) || ".:'\"′″,;/-_°".contains(c) => {
+                    rest.skip(c.len_utf8())
+                }
                 _ => [Word::Hours, Word::Minutes, Word::Seconds, Word::Time]
                     .iter()
                     .find_map(|w| says(rest, *w))

@@ -65,7 +65,9 @@ fn date_year_first(input: Text<'_>) -> Parsed<'_, DateWritten> {
     {
         (end, to_day) = (r, Some(to));
     }
-    Written::new(year, 4, month, day).to(to_day).ends(input, end)
+    Written::new(year, 4, month, day)
+        .to(to_day)
+        .ends(input, end)
 }
 
 /// Blanks after the point of "2024. 3. 5."
@@ -105,8 +107,8 @@ fn date_iso_other(input: Text<'_>) -> Parsed<'_, DateWritten> {
         }
         (rest, day.mantissa as i32)
     };
-    let clock = rest.as_str().starts_with('T')
-        && rest.skip(1).peek().is_some_and(|c| c.is_ascii_digit());
+    let clock =
+        rest.as_str().starts_with('T') && rest.skip(1).peek().is_some_and(|c| c.is_ascii_digit());
     if !clock || !(1..=365 + i32::from(leap(year))).contains(&of_year) {
         return no(input);
     }
@@ -145,7 +147,9 @@ fn date_across_months(input: Text<'_>) -> Parsed<'_, DateWritten> {
         return no(input);
     }
     let year = if first == 12 { year - 1 } else { year };
-    Written::new(year, 4, first, day).to(Some(1)).ends(input, rest)
+    Written::new(year, 4, first, day)
+        .to(Some(1))
+        .ends(input, rest)
 }
 
 /// `5 March 2024`, `5. März 2024`, `5/6 March 2024`, `05-Mar-2024`, `3 Mar '25`, `5 de marzo de 2024`, `28 Mar.` (the year carried).
@@ -178,7 +182,8 @@ fn date_day_first(input: Text<'_>) -> Parsed<'_, DateWritten> {
     let name = at.as_str()[..rest.at() - at.at()].trim_end_matches('.');
     let sure = zone_or_clock(rest);
     let short = name.chars().count() < 4 && name.starts_with(char::is_lowercase);
-    if never_yearless(name) || (short || is_dec(name)) && !(sure || day.places > 0 && !is_dec(name)) {
+    if never_yearless(name) || (short || is_dec(name)) && !(sure || day.places > 0 && !is_dec(name))
+    {
         return no(input);
     }
     written.ends(input, rest)
@@ -244,9 +249,7 @@ fn date_month_first(input: Text<'_>) -> Parsed<'_, DateWritten> {
     }
     let capital = name.starts_with(char::is_uppercase) && name.chars().count() >= 3;
     // at the end of a field, or before the numbers of a table's row
-    let ends = skip_comma(rest)
-        .peek()
-        .is_none_or(|c| c.is_ascii_digit());
+    let ends = skip_comma(rest).peek().is_none_or(|c| c.is_ascii_digit());
     let sure = zone_or_clock(rest);
     let yearless = capital
         && !never_yearless(name)
@@ -264,7 +267,9 @@ fn date_month_first(input: Text<'_>) -> Parsed<'_, DateWritten> {
 
 /// Words that are months in some language and something else in every sheet: magnitude, "set", "out".
 fn never_yearless(name: &str) -> bool {
-    ["mag", "set", "out"].iter().any(|w| name.eq_ignore_ascii_case(w))
+    ["mag", "set", "out"]
+        .iter()
+        .any(|w| name.eq_ignore_ascii_case(w))
 }
 
 /// December, or declination.
@@ -483,7 +488,16 @@ fn day(input: Text<'_>) -> Parsed<'_, (Number, Option<u32>)> {
 
 /// "To" between the two days of a night.
 const NIGHT_TO: &[&str] = &[
-    "to the ", "to ", "auf den ", "auf ", "au ", "al ", "op ", "na ", "para o dia ", "para ",
+    "to the ",
+    "to ",
+    "auf den ",
+    "auf ",
+    "au ",
+    "al ",
+    "op ",
+    "na ",
+    "para o dia ",
+    "para ",
 ];
 
 /// After the first day of a double night: a slash, a dash, or a word.

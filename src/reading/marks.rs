@@ -27,9 +27,12 @@ fn letters<'a>(input: Text<'a>, forms: &[&str]) -> Option<Text<'a>> {
 
 /// `h`, `hr`, `hrs`, `u` (Dutch), `ʰ`, `^h`, `$^{h}$`, or the word in any of the languages.
 pub fn hour_mark(input: Text<'_>) -> Parsed<'_, Mark> {
-    let rest = any_of(input, &["ʰ", "$^{h}$", "$^h$", "^{h}", "^h", "<sup>h</sup>"])
-        .or_else(|| letters(input, &["hrs.", "hrs", "hr.", "hr", "h.", "h", "u"]))
-        .or_else(|| says(input, Word::Hours));
+    let rest = any_of(
+        input,
+        &["ʰ", "$^{h}$", "$^h$", "^{h}", "^h", "<sup>h</sup>"],
+    )
+    .or_else(|| letters(input, &["hrs.", "hrs", "hr.", "hr", "h.", "h", "u"]))
+    .or_else(|| says(input, Word::Hours));
     rest.map_or_else(|| no(input), |r| Ok((r, Mark::Hour)))
 }
 
@@ -69,17 +72,23 @@ pub fn degree_mark(input: Text<'_>) -> Parsed<'_, Mark> {
 
 /// The letter `m`, `min`, `ᵐ`, `^m`, or the word.
 pub fn minute_letter(input: Text<'_>) -> Parsed<'_, Mark> {
-    let rest = any_of(input, &["ᵐ", "$^{m}$", "$^m$", "^m", "^{m}", "<sup>m</sup>"])
-        .or_else(|| letters(input, &["mins", "min.", "min", "m"]))
-        .or_else(|| says(input, Word::Minutes));
+    let rest = any_of(
+        input,
+        &["ᵐ", "$^{m}$", "$^m$", "^m", "^{m}", "<sup>m</sup>"],
+    )
+    .or_else(|| letters(input, &["mins", "min.", "min", "m"]))
+    .or_else(|| says(input, Word::Minutes));
     rest.map_or_else(|| no(input), |r| Ok((r, Mark::Minute)))
 }
 
 /// The letter `s`, `sec`, `ˢ`, `^s`, or the word.
 pub fn second_letter(input: Text<'_>) -> Parsed<'_, Mark> {
-    let rest = any_of(input, &["ˢ", "$^{s}$", "$^s$", "^s", "^{s}", "<sup>s</sup>"])
-        .or_else(|| letters(input, &["secs", "sec.", "sec", "s"]))
-        .or_else(|| says(input, Word::Seconds));
+    let rest = any_of(
+        input,
+        &["ˢ", "$^{s}$", "$^s$", "^s", "^{s}", "<sup>s</sup>"],
+    )
+    .or_else(|| letters(input, &["secs", "sec.", "sec", "s"]))
+    .or_else(|| says(input, Word::Seconds));
     rest.map_or_else(|| no(input), |r| Ok((r, Mark::Second)))
 }
 
@@ -88,8 +97,8 @@ pub fn double_prime(input: Text<'_>) -> Parsed<'_, Mark> {
     let rest = any_of(
         input,
         &[
-            "\"\"", "\"", "″", "”", "“", "„", "''", "′′", "’’", "‘‘", "``", "´´", "&Prime;", "&quot;",
-            "&#34;", "&#8243;", "&#x2033;", "&rdquo;", "ʺ", "＂",
+            "\"\"", "\"", "″", "”", "“", "„", "''", "′′", "’’", "‘‘", "``", "´´", "&Prime;",
+            "&quot;", "&#34;", "&#8243;", "&#x2033;", "&rdquo;", "ʺ", "＂",
         ],
     )
     .or_else(|| letters(input, &["arcsecs", "arcsec.", "arcsec", "asec"]))
@@ -105,8 +114,8 @@ pub fn prime(input: Text<'_>) -> Parsed<'_, Mark> {
     let rest = any_of(
         input,
         &[
-            "'", "′", "’", "‘", "´", "`", "&prime;", "&#39;", "&#8242;", "&#x2032;", "&apos;", "&rsquo;", "ʹ",
-            "＇",
+            "'", "′", "’", "‘", "´", "`", "&prime;", "&#39;", "&#8242;", "&#x2032;", "&apos;",
+            "&rsquo;", "ʹ", "＇",
         ],
     )
     .or_else(|| letters(input, &["arcmins", "arcmin.", "arcmin", "amin", "p"]))

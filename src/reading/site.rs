@@ -99,7 +99,9 @@ enum Axis {
 /// One coordinate, known by its label or its compass letter.
 fn geographic(input: Text<'_>) -> Parsed<'_, (Angle, Axis)> {
     // "North latitude 54.3", "Long. W 3.02": the point of the compass beside the label
-    let before = compass(input).ok().filter(|(r, _)| label(r.skip_blanks()).is_some());
+    let before = compass(input)
+        .ok()
+        .filter(|(r, _)| label(r.skip_blanks()).is_some());
     let label = label(before.map_or(input, |(r, _)| r.skip_blanks()));
     let mut point = before.map(|(r, c)| Spanned::new(c, input.span_to(r)));
     let mut rest = input;
@@ -115,7 +117,9 @@ fn geographic(input: Text<'_>) -> Parsed<'_, (Angle, Axis)> {
     }
     let (mut rest, mut found) = alt((hyphened, angle, angle_blanks)).parse(rest)?;
     // the full stop after a lone letter
-    if found.compass.is_some_and(|c| c.span.end == rest.at() && c.span.len() == 1)
+    if found
+        .compass
+        .is_some_and(|c| c.span.end == rest.at() && c.span.len() == 1)
         && rest.peek() == Some('.')
     {
         rest = rest.skip(1);

@@ -111,7 +111,9 @@ fn bracketed(input: Text<'_>) -> Parsed<'_, Uncertainty> {
     let named = says(inside, Word::Uncertainty);
     let mut rest = named.map_or(inside, |r| r.skip_blanks());
     while named.is_some() && rest.peek().is_some_and(|c| "=:±~".contains(c)) {
-        rest = rest.skip(rest.peek().map_or(1, char::len_utf8)).skip_blanks();
+        rest = rest
+            .skip(rest.peek().map_or(1, char::len_utf8))
+            .skip_blanks();
     }
     let (after, value) = number(rest)?;
     let plain = glued && value.places == 0 && value.whole_digits <= 2

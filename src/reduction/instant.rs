@@ -97,7 +97,9 @@ fn julian(number: Number, count: JulianCount, written: &InstantWritten) -> Resol
         .unwrap_or(u64::MAX);
     let whole = (number.mantissa / scale) as f64;
     let part = (number.mantissa % scale) as f64 / scale as f64;
-    if count == JulianCount::Short || count == JulianCount::Jd && (10_000.0..100_000.0).contains(&whole) {
+    if count == JulianCount::Short
+        || count == JulianCount::Jd && (10_000.0..100_000.0).contains(&whole)
+    {
         return doubtful(format!(
             "JD {} can be reduced (JD - 2400000) or modified (MJD), and the two begin 12 hours apart",
             number.value()
