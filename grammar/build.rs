@@ -7,6 +7,8 @@ use std::{env, fs};
 
 #[path = "../src/reading/fold.rs"]
 mod fold;
+#[path = "../src/sky/data/tables.rs"]
+mod sky_tables;
 
 /// Keys whose value is a plain list of words, with the meaning each gives.
 const PLAIN: &[(&str, &str)] = &[
@@ -24,6 +26,7 @@ const PLAIN: &[(&str, &str)] = &[
     ("ecliptic", "Ecliptic"),
     ("latitude", "Latitude"),
     ("longitude", "Longitude"),
+    ("geographic-pair", "GeographicPair"),
     ("elevation", "Elevation"),
     ("site", "Site"),
     ("observer", "Observer"),
@@ -212,8 +215,10 @@ fn main() {
         SLOTS + 1
     )
     .expect("to a string");
-    let out = Path::new(&env::var("OUT_DIR").expect("cargo sets it")).join("words.rs");
-    fs::write(out, code).expect("writable OUT_DIR");
+    let out = env::var("OUT_DIR").expect("cargo sets it");
+    let out = Path::new(&out);
+    fs::write(out.join("words.rs"), code).expect("writable OUT_DIR");
+    sky_tables::lay_out(Path::new(&root), out);
 }
 
 /// Slots of the table: 27 for each first letter (by the second letter, or 0 for none), then one for all else.

@@ -203,6 +203,18 @@ impl Angle {
             / [1.0, 60.0, 3600.0][parts.len().clamp(1, 3) - 1]
     }
 
+    /// The same angle with every place in it moved: `to(offset)` gives the new one.
+    pub fn moved(mut self, to: impl Fn(usize) -> usize) -> Angle {
+        let span = |s: Span| Span::new(to(s.start), to(s.end));
+        self.sign = self.sign.map(|s| Spanned::new(s.value, span(s.span)));
+        self.compass = self.compass.map(|c| Spanned::new(c.value, span(c.span)));
+        for part in &mut self.parts {
+            part.span = span(part.span);
+        }
+        self.span = span(self.span);
+        self
+    }
+
     /// The unit its own marks speak of, if they do.
     pub fn marked_unit(&self) -> Option<AngleUnit> {
         match self.parts().first()?.mark {
@@ -426,6 +438,18 @@ pub struct InstantWritten {
     pub span: Span,
 }
 
+impl InstantWritten {
+    /// True where it tells more than a day: a clock time, or decimals of the day or of a Julian date.
+    pub fn clock_or_decimals(&self) -> bool {
+        self.clock.is_some()
+            || match self.date.map(|d| d.value) {
+                Some(DateWritten::Calendar { day, .. }) => day.places > 0,
+                Some(DateWritten::Julian { .. }) => true,
+                None => false,
+            }
+    }
+}
+
 /// A site as written: a name, coordinates, or both.
 #[derive(Clone, PartialEq, Debug, Default)]
 pub struct SiteWritten {
@@ -534,6 +558,8 @@ pub struct Report {
     pub instants: Vec<(InstantWritten, Nearness)>,
     /// The site, where one is written.
     pub site: Option<(SiteWritten, Nearness)>,
+    /// Capitalised words of its part that could name a site of the register, where no site is written.
+    pub mentions: Vec<Spanned<String>>,
     /// Altitude, azimuth, hour angle, airmass stated beside it.
     pub stated_horizon: Vec<StatedHorizon>,
     /// Galactic or ecliptic coordinates stated beside it.
@@ -567,7 +593,8 @@ pub enum System {
     Mean,
     /// Geocentric apparent, true equator and equinox of date
     Apparent,
-    /// Topocentric hour angle and declination, true equator of date
+    /// Hour angle and declination of the geocentric apparent place, true equator of date: sidereal time less right
+    /// ascension, without diurnal aberration and parallax
     HourAngle,
     /// Topocentric azimuth and altitude
     Horizontal,

@@ -4,8 +4,9 @@ use crate::house::{self, House, HouseError};
 use crate::report::{Examined, Finding, Frame};
 use crate::rules::{self, Selection};
 use crate::sheet::Sheet;
+use crate::sky::almanac::Almanac;
 use crate::{reading, reduction};
-use std::collections::HashMap;
+use std::collections::{HashMap, HashSet};
 use std::ffi::OsStr;
 use std::io::Read;
 use std::path::{Path, PathBuf};
@@ -24,11 +25,20 @@ pub fn examine_sheet(
     now_utc: (f64, f64),
     selection: &Selection,
 ) -> Vec<Examined> {
+    let almanac = Almanac::new();
+    let desk = rules::Desk {
+        house,
+        to,
+        now_utc,
+        text: &sheet.text,
+        selection,
+        almanac: &almanac,
+    };
     reading::read(sheet)
         .into_iter()
         .map(|report| {
-            let meant = reduction::mean(&report, house, to);
-            rules::examine(report, meant, house, to, now_utc, &sheet.text, selection)
+            let meant = reduction::mean_by(&report, house, to, &almanac);
+            desk.examine(report, meant)
         })
         .collect()
 }
@@ -84,11 +94,21 @@ pub struct Run {
     pub failures: Vec<Failure>,
     /// What is worth saying and stops nothing: name and note.
     pub notes: Vec<(String, String)>,
+    /// The rules asked, where not all of them were.
+    pub only: Vec<String>,
+    /// The rules left out.
+    pub except: Vec<String>,
+    /// The files done, by what the disk calls them.
+    done: HashSet<PathBuf>,
 }
 
 /// Does the whole run. What fails of one sheet stops no other.
 pub fn run(wanted: &Wanted) -> Run {
-    let mut run = Run::default();
+    let mut run = Run {
+        only: wanted.selection.only.clone(),
+        except: wanted.selection.except.clone(),
+        ..Run::default()
+    };
     let mut houses = Houses::new(wanted.house.as_deref());
     let inputs = match &wanted.inputs[..] {
         [] => vec![PathBuf::from(STANDARD_INPUT)],
@@ -96,6 +116,10 @@ pub fn run(wanted: &Wanted) -> Run {
     };
     for input in inputs {
         if input.as_os_str() == STANDARD_INPUT {
+            if !run.done.insert(input) {
+                run.note(STANDARD_INPUT, "is named twice: it was read once");
+                continue;
+            }
             let mut bytes = Vec::new();
             match std::io::stdin().lock().read_to_end(&mut bytes) {
                 Ok(_) => one(
@@ -109,7 +133,7 @@ pub fn run(wanted: &Wanted) -> Run {
                 ),
                 Err(e) => run.fail(
                     "standard input",
-                    format!("cannot be read: {e}"),
+                    house::io_words(&e),
                     "give the sheet as a file",
                 ),
             }
@@ -182,7 +206,7 @@ fn folder(path: &Path, wanted: &Wanted, houses: &mut Houses, run: &mut Run) {
             Ok(_) => {}
             Err(e) => run.fail(
                 &path.display().to_string(),
-                format!("cannot be walked: {e}"),
+                walk_words(&e),
                 "check its permissions",
             ),
         }
@@ -198,6 +222,12 @@ fn folder(path: &Path, wanted: &Wanted, houses: &mut Houses, run: &mut Run) {
 
 fn file(path: &Path, walked: bool, wanted: &Wanted, houses: &mut Houses, run: &mut Run) {
     let name = path.display().to_string();
+    if let Ok(real) = path.canonicalize()
+        && !run.done.insert(real)
+    {
+        run.note(&name, "is named twice: it was read once");
+        return;
+    }
     match std::fs::read(path) {
         Ok(bytes) => {
             let folder = match path.parent() {
@@ -209,11 +239,15 @@ fn file(path: &Path, walked: bool, wanted: &Wanted, houses: &mut Houses, run: &m
         Err(e) if e.kind() == std::io::ErrorKind::NotFound => {
             run.fail(&name, "there is no such file or folder", &near_file(path));
         }
-        Err(e) => run.fail(
-            &name,
-            format!("cannot be read: {e}"),
-            "check its permissions",
-        ),
+        Err(e) => run.fail(&name, house::io_words(&e), "check its permissions"),
+    }
+}
+
+/// What went wrong on the way through a folder.
+fn walk_words(error: &ignore::Error) -> String {
+    match error.io_error() {
+        Some(e) => format!("a part of it was not seen: {}", house::io_words(e)),
+        None => format!("a part of it was not seen: {error}"),
     }
 }
 
@@ -234,8 +268,8 @@ fn near_file(path: &Path) -> String {
         .map(|e| e.file_name().to_string_lossy().into_owned())
         .collect();
     match house::nearest(&wanted, names.iter().map(String::as_str)) {
-        Some(near) => format!("did you mean {}?", folder.join(near).display()),
-        None => "check the path; a name of - reads standard input".to_owned(),
+        Some(near) => format!("did you mean {}?", path.with_file_name(near).display()),
+        None => "check the path (a single - reads standard input)".to_owned(),
     }
 }
 
@@ -248,11 +282,7 @@ fn one(
     houses: &mut Houses,
     run: &mut Run,
 ) {
-    let shown = if name == STANDARD_INPUT {
-        "standard input".to_owned()
-    } else {
-        name.clone()
-    };
+    let shown = name.clone();
     if bytes.iter().all(u8::is_ascii_whitespace) {
         run.note(&shown, "is empty: there is nothing to read in it");
         return;
@@ -269,8 +299,17 @@ fn one(
     }
     let sheet = match Sheet::decode(name, &bytes) {
         Ok(sheet) => sheet,
-        Err(e) if walked => return run.note(&shown, format!("passed over: {e}")),
-        Err(e) => return run.fail(&shown, e.to_string(), "save it as plain text and try again"),
+        Err(e) if walked => {
+            let words = e.to_string();
+            let what = words.split("; ").next().unwrap_or_default();
+            return run.note(&shown, format!("passed over: {what}"));
+        }
+        Err(e) => {
+            // the error holds what is wrong, and after it what to do
+            let words = e.to_string();
+            let (what, advice) = words.split_once("; ").unwrap_or((&words, "give a text"));
+            return run.fail(&shown, what, advice);
+        }
     };
     for note in sheet.notes() {
         run.note(&shown, note.as_str());

@@ -106,6 +106,128 @@ fn exit_statuses_are_those_of_the_design() {
 }
 
 #[test]
+fn what_counts_as_now_is_read_as_people_write_it() {
+    let dir = folder(&[("good.txt", GOOD.as_bytes())]);
+    let at = |now: &str| colure(dir.path(), &["screen", "--now", now, "good.txt"]);
+    for now in ["2026-11-01 12:00 UT", "2026-11-01", "2026-11-01T12:00:00Z"] {
+        assert_eq!(at(now).status, 0, "{now}: {}", at(now).err);
+    }
+    let told = at("2026-02-30");
+    assert!(
+        told.status == 2 && told.err.contains("February 2026 has 28 days"),
+        "{}",
+        told.err
+    );
+}
+
+#[test]
+fn rules_chosen_are_named_and_none_left_is_an_error() {
+    let dir = folder(&[("good.txt", GOOD.as_bytes())]);
+    let only = colure(
+        dir.path(),
+        &["screen", NOW[0], NOW[1], "--only", "daylight", "good.txt"],
+    );
+    assert!(only.out.contains("Asked only: daylight."), "{}", only.out);
+    let none = colure(
+        dir.path(),
+        &[
+            "screen", "--only", "daylight", "--except", "daylight", "good.txt",
+        ],
+    );
+    assert_eq!((none.status, none.out.as_str()), (2, ""));
+    assert!(none.err.contains("no rule is left"), "{}", none.err);
+}
+
+#[test]
+fn a_sheet_named_twice_is_done_once() {
+    let dir = folder(&[("in/good.txt", GOOD.as_bytes())]);
+    let twice = colure(
+        dir.path(),
+        &[
+            "reduce",
+            "--as",
+            "jsonl",
+            NOW[0],
+            NOW[1],
+            "in",
+            "in/good.txt",
+            "./in/good.txt",
+        ],
+    );
+    assert_eq!(twice.out.lines().count(), 1, "{}", twice.out);
+    assert_eq!(
+        twice.err.matches("is named twice").count(),
+        2,
+        "{}",
+        twice.err
+    );
+}
+
+#[test]
+fn a_sheet_without_a_position_is_named_on_every_channel() {
+    let dir = folder(&[
+        ("good.txt", GOOD.as_bytes()),
+        ("talk.txt", b"Clear skies to all.\n"),
+    ]);
+    let screen = colure(
+        dir.path(),
+        &["screen", NOW[0], NOW[1], "talk.txt", "good.txt"],
+    );
+    assert!(screen.out.contains("talk.txt\n"), "{}", screen.out);
+    assert_eq!(
+        screen.out.matches("no position found").count(),
+        1,
+        "{}",
+        screen.out
+    );
+    for form in ["text", "csv", "jsonl"] {
+        let told = colure(
+            dir.path(),
+            &[
+                "reduce", "--as", form, NOW[0], NOW[1], "talk.txt", "good.txt",
+            ],
+        );
+        assert!(
+            told.err.contains("talk.txt: no position found"),
+            "{form}: {}",
+            told.err
+        );
+    }
+}
+
+#[test]
+fn a_narrow_screen_is_kept_to() {
+    let dir = folder(&[("bad.txt", BAD.as_bytes())]);
+    for arguments in [
+        &["screen", NOW[0], NOW[1], "bad.txt"][..],
+        &["rulebook", "below-horizon"],
+        &["rulebook"],
+    ] {
+        let mut narrow = command(dir.path());
+        let told = told(
+            narrow
+                .env("COLUMNS", "60")
+                .args(arguments)
+                .output()
+                .unwrap(),
+        );
+        for line in told.out.lines() {
+            // a formula or an example stays as it is, and a word is never broken
+            let words = line.split_whitespace().count();
+            let free =
+                line.starts_with("line ") || words < 4 || arguments[0] == "rulebook" && words < 14;
+            assert!(line.chars().count() <= 60 || free, "{line}");
+        }
+    }
+}
+
+#[test]
+fn the_sun_is_cautioned_of_in_one_wording() {
+    let rule = colure::rules::find("near-sun").unwrap();
+    assert!(rule.source.contains(colure::output::summary::SUN_CAUTION));
+}
+
+#[test]
 fn data_goes_to_standard_output_and_words_beside_it() {
     let dir = folder(&[("bad.txt", BAD.as_bytes())]);
     let json = colure(
@@ -201,7 +323,7 @@ fn what_cannot_be_done_is_named_and_the_rest_is_done() {
         (
             "under/sheet.txt",
             2,
-            &["colure.yaml:1:12", "lowes", "`lowest`"],
+            &["colure.yaml, line 1", "lowes", "`lowest`"],
         ),
     ] {
         let told = run(sheet);
@@ -318,6 +440,25 @@ fn sites_shows_the_register_and_what_it_makes_of_words() {
     );
     let pair = colure(dir.path(), &["sites", "54 18 36 N, 3 01 12 W"]);
     assert!(pair.out.contains("54.3100° N, 3.0200° W"), "{}", pair.out);
+    // a hyphen before a number is a sign and no option, and the height may stand with it
+    let south = colure(dir.path(), &["sites", "-27.2 -69.97 1690 m"]);
+    assert!(
+        south.out.contains("27.2000° S, 69.9700° W"),
+        "{} {}",
+        south.out,
+        south.err
+    );
+    for (words, told) in [
+        ("54 75 N, 3 01 W", "75 minutes: minutes stop below 60"),
+        ("54 18 N, 3 01 O", "east in German"),
+    ] {
+        let wrong = colure(dir.path(), &["sites", words]);
+        assert!(
+            wrong.status == 1 && wrong.out.contains(told),
+            "{}",
+            wrong.out
+        );
+    }
     let unknown = colure(dir.path(), &["sites", "Skarm Head"]);
     assert_eq!(unknown.status, 1);
     assert!(

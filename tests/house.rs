@@ -273,20 +273,73 @@ fn own_objects_are_read_from_csv() {
     assert_eq!(house.known_objects[0].radius_arcsec, 120.0);
     assert!((house.known_objects[1].dec_deg + 5.5).abs() < 1e-12);
     assert_eq!(house.object_lists, std::slice::from_ref(&list));
-    for (text, told) in [
-        ("name,ra,decl.x\n", "decl.x"),
-        ("name,ra,dec\nA,25 00 00,1\n", "line 2"),
-        ("name,ra,dec\nA,1 00 00,91\n", "line 2"),
-        ("name,dec\n", "columns"),
+    // the words of the list, or the whole line
+    for (text, words, told) in [
+        ("name,ra,decl.x\n", "decl.x", "unknown column"),
+        (
+            "# ours\n\nname,ra,dec\n# x\nA,25 00 00,1\n",
+            "25 00 00",
+            "ra `25 00 00`",
+        ),
+        ("name,ra,dec\nA,1 00 00,91\n", "91", "dec `91`"),
+        ("name,ra,dec\nA,1 00 00,\n", "A,1 00 00,", "dec is missing"),
+        ("name,dec\n", "name,dec", "columns"),
+        ("name;ra;dec\nA;1 00 00;5\n", "name;ra;dec", "semicolons"),
+        ("name,ra,dec,radius\nA,1 00 00,5,2'\n", "2'", "radius"),
+        ("name,ra,dec,equinox\nA,1 00 00,5,J200\n", "J200", "J200"),
     ] {
         std::fs::write(&list, text).unwrap();
         let error = house::load(&path, &[]).unwrap_err();
-        assert!(
-            error.mistakes[0].what.contains(told),
-            "{text}: {}",
-            error.mistakes[0].what
-        );
-        assert_eq!(error.mistakes[0].span.unwrap().of(&error.text), "own.csv");
+        let mistake = &error.mistakes[0];
+        assert!(mistake.what.contains(told), "{text}: {}", mistake.what);
+        assert_eq!(mistake.list.as_ref(), Some(&error.lists[0].0));
+        assert_eq!(mistake.span.unwrap().of(&error.lists[0].1), words);
+    }
+    // a list that is not there is a mistake of the house file
+    std::fs::remove_file(&list).unwrap();
+    let error = house::load(&path, &[]).unwrap_err();
+    assert_eq!(error.mistakes[0].span.unwrap().of(&error.text), "own.csv");
+    assert!(
+        error.mistakes[0].what.ends_with("there is no such file"),
+        "{}",
+        error.mistakes[0].what
+    );
+}
+
+#[test]
+fn one_mistake_is_told_once_and_in_plain_words() {
+    // a site's own mistake makes none at its observers
+    let told = mistakes(
+        "sites:\n  Skarn Head: { latitude: 95, longitude: 3 W }\nobservers:\n  R. Quill: { site: Skarn Head }\n",
+    );
+    assert_eq!(told.len(), 1, "{told:?}");
+    // one name in two writings, told at both
+    let told = mistakes(
+        "sites:\n  Cabeço: { latitude: 1, longitude: 1 }\n  CABECO: { latitude: 2, longitude: 2 }\n",
+    );
+    let words: Vec<&str> = told.iter().map(|m| m.0.as_str()).collect();
+    assert_eq!(words, ["Cabeço", "CABECO"]);
+    let told = mistakes(
+        "sites:\n  A: { latitude: 1, longitude: 1, aliases: [ Hill ] }\n  hill: { latitude: 2, longitude: 2 }\n",
+    );
+    assert_eq!(told.len(), 2, "{told:?}");
+    let told = mistakes("horizon: { lowest: 95 }\n");
+    assert!(
+        told[0].1.contains("95 is too high") && told[0].2.contains("−5 to 90"),
+        "{told:?}"
+    );
+    let told = mistakes("weights: { daylight: quiet }\n");
+    assert!(!told[0].2.contains("did you mean"), "{told:?}");
+    for (text, what) in [
+        ("horizon:\n\tlowest: 5\n", "line 2 is indented with a tab"),
+        ("horizon: { lowest: [ 5 ] }\n", "a list stands where"),
+        (
+            "horizon: { lowest: @5 }\n",
+            "cannot begin with this character",
+        ),
+    ] {
+        let told = mistakes(text);
+        assert!(told[0].1.contains(what), "{told:?}");
     }
 }
 
@@ -309,6 +362,11 @@ fn frames_follow_the_year_rule() {
     is("FK4 B1950", System::Fk4, "B1950.0");
     is("of date", System::Mean, "of date");
     is("apparent", System::Apparent, "of date");
+    is("of-date", System::Mean, "of date");
+    is("J2000,0", System::Icrs, "J2000.0");
+    is("J 2000", System::Icrs, "J2000.0");
+    is("JNow", System::Mean, "of date");
+    is("EOD", System::Mean, "of date");
     assert_eq!(
         frame_named("B1950").map(|f| f.equinox),
         Ok(Equinox::Besselian(1950.0))
@@ -411,6 +469,7 @@ fn report() -> Report {
         magnitude: None,
         uncertainty_arcsec: None,
         claims_new: None,
+        mentions: Vec::new(),
         stets: Vec::new(),
         block: Span::default(),
     }

@@ -106,7 +106,11 @@ fn wrong_with(r: &Report, m: &Meant, meaning: &str) -> Vec<String> {
     {
         wrong.push(format!("role {:?}, not {role}", r.role));
     }
-    if let Some(utc) = said(5) {
+    if said(5) == Some("none") {
+        if m.instant.is_some() || !r.instants.is_empty() {
+            wrong.push(format!("instant {:?}, where none is told", r.instants));
+        }
+    } else if let Some(utc) = said(5) {
         let want: chrono::NaiveDateTime = utc.parse().unwrap();
         let want_jd = want.and_utc().timestamp_millis() as f64 / 86_400_000.0 + 2_440_587.5;
         match m.instant {
@@ -123,7 +127,11 @@ fn wrong_with(r: &Report, m: &Meant, meaning: &str) -> Vec<String> {
             }
         }
     }
-    if let Some(place) = said(7) {
+    if said(7) == Some("none") {
+        if r.site.is_some() {
+            wrong.push(format!("site {:?}, where none is told", r.site));
+        }
+    } else if let Some(place) = said(7) {
         let want: Vec<f64> = place
             .split_whitespace()
             .map(|n| n.parse().unwrap())
@@ -175,6 +183,11 @@ fn hold(file: &str) {
 #[test]
 fn every_style_is_read_as_told() {
     hold("styles.txt");
+}
+
+#[test]
+fn every_carrier_is_read_as_told() {
+    hold("carriers.txt");
 }
 
 #[test]

@@ -3,6 +3,7 @@
 
 use colure::reduction::{Sky, parse_target, printed, to};
 use colure::report::{Equinox, Frame, InstantMeant, Meant, ReadPosition, SiteMeant, System};
+use colure::sky::almanac::Almanac;
 use colure::sky::moment::Moment;
 use colure::sky::{Direction, separation_deg, time};
 
@@ -99,8 +100,8 @@ fn printed_as_written() {
             airless: part[9] == "yes",
             epoch: None,
         };
-        for clock in [Moment::new as fn((f64, f64)) -> Moment, Moment::shared] {
-            let sky = Sky::new(&meant, clock);
+        for almanac in [Almanac::new(), Almanac::by(Moment::shared)] {
+            let sky = Sky::new(&meant, &almanac);
             let reduced = to::reduce(&written, j2000, &sky).unwrap_or_else(|| panic!("{line}"));
             let got = Direction::new(reduced.ra_deg, reduced.dec_deg);
             let expected = Direction::new(number(10).unwrap(), number(11).unwrap());
@@ -155,7 +156,8 @@ fn every_target_comes_back_to_the_icrs() {
         }),
         ..Meant::default()
     };
-    let sky = Sky::new(&meant, Moment::new);
+    let almanac = Almanac::new();
+    let sky = Sky::new(&meant, &almanac);
     for target in [
         "J2000",
         "ICRS",
@@ -189,7 +191,7 @@ fn every_target_comes_back_to_the_icrs() {
             separation_deg(place, Direction::new(back.icrs_ra_deg, back.icrs_dec_deg)) * 3600.0;
         // fk54z and fk45z close to 0.5 mas
         assert!(off < 5e-4, "{target:?}: {off}");
-        let undated = Sky::new(&Meant::default(), Moment::new);
+        let undated = Sky::new(&Meant::default(), &almanac);
         let of_date = target.equinox == Equinox::OfDate;
         assert_eq!(
             to::reduce(&written, parse_target("ICRS").unwrap(), &undated).is_none(),

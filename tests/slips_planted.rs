@@ -137,7 +137,9 @@ impl Scene {
             let latitude = ((latitude + dice.unit()) * 100.0).round() / 100.0;
             let longitude = ((longitude + dice.unit()) * 100.0).round() / 100.0;
             let minute = 10_957 * 1440 + (dice.unit() * 20.0 * 365.25 * 1440.0) as i64;
-            let star = catalogue::entries()[dice.below(catalogue::entries().len())];
+            let star = catalogue::entries()
+                .nth(dice.below(catalogue::entries().len()))
+                .expect("one of them");
             let (mut ra, mut dec) = if evidence == "star" {
                 (
                     star.icrs.ra_deg.to_radians(),

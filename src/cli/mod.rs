@@ -1,5 +1,6 @@
 //! The command line: what may be asked, and the exit status. 0 nothing at or above `--stop-at`, 1 something, 2 not done.
 
+mod moment;
 mod rulebook;
 mod sheets;
 mod sites;
@@ -8,6 +9,7 @@ use crate::house::frame::frame_named;
 use crate::output::Form;
 use crate::report::Frame;
 use crate::{rules, sky};
+use clap::error::{ContextKind, ContextValue};
 use clap::{Args, Parser, Subcommand, ValueEnum};
 use std::ffi::OsString;
 use std::io::{self, IsTerminal, Write};
@@ -63,8 +65,8 @@ struct SheetArguments {
     /// House rules to use instead of the nearest colure.yaml at or above each sheet
     #[arg(long, value_name = "FILE")]
     house: Option<PathBuf>,
-    /// What counts as now (UTC), for runs that can be repeated: 2026-11-01T00:00:00Z
-    #[arg(long, value_name = "INSTANT", value_parser = instant)]
+    /// What counts as now, for runs that can be repeated: 2026-11-01, or 2026-11-01 12:00 UT
+    #[arg(long, value_name = "INSTANT", value_parser = moment::instant)]
     now: Option<Now>,
     /// Exit with 1 when a verdict is this or heavier
     #[arg(long, value_name = "VERDICT", value_enum, default_value_t)]
@@ -95,9 +97,20 @@ struct Now((f64, f64));
 
 /// Runs the command with its arguments and gives the exit status.
 pub fn run(arguments: impl IntoIterator<Item = OsString>) -> u8 {
-    let arguments = match Arguments::try_parse_from(arguments) {
+    let arguments = match Arguments::try_parse_from(signs_kept(arguments)) {
         Ok(arguments) => arguments,
-        Err(error) => {
+        Err(mut error) => {
+            // what is offered for an unknown option must be near it
+            let near = |offer: &str, wrong: &str| strsim::damerau_levenshtein(offer, wrong) <= 2;
+            if let (Some(ContextValue::String(wrong)), Some(ContextValue::String(offer))) = (
+                error.get(ContextKind::InvalidArg),
+                error.get(ContextKind::SuggestedArg),
+            ) && !near(offer, wrong)
+            {
+                error.remove(ContextKind::SuggestedArg);
+            }
+            // "to pass it as a value": no sheet is called so
+            error.remove(ContextKind::Suggested);
             // a closed pipe is no reason to complain
             let _ = error.print();
             return if error.use_stderr() {
@@ -114,6 +127,20 @@ pub fn run(arguments: impl IntoIterator<Item = OsString>) -> u8 {
         Some(Command::Rulebook { rule }) => rulebook::run(rule.as_deref()),
         Some(Command::Sites { name, house }) => sites::run(&name, house.as_deref()),
     }
+}
+
+/// A southern or western number after `sites` is no option: its sign becomes a typographic minus.
+fn signs_kept(arguments: impl IntoIterator<Item = OsString>) -> Vec<OsString> {
+    let mut arguments: Vec<OsString> = arguments.into_iter().collect();
+    if arguments.get(1).is_some_and(|command| command == "sites") {
+        for argument in &mut arguments[2..] {
+            let signed = argument.to_str().and_then(|a| a.strip_prefix('-'));
+            if let Some(number) = signed.filter(|n| n.starts_with(|c: char| c.is_ascii_digit())) {
+                *argument = format!("−{number}").into();
+            }
+        }
+    }
+    arguments
 }
 
 /// What to do next, in ten lines.
@@ -171,19 +198,6 @@ fn no_such_rule(word: &str) -> String {
         Some(near) => format!("there is no such rule; did you mean `{}`?", near.name),
         None => "there is no such rule; `colure rulebook` lists them".to_owned(),
     }
-}
-
-fn instant(word: &str) -> Result<Now, String> {
-    let plain = word.trim();
-    let timestamp = plain
-        .parse::<jiff::Timestamp>()
-        .or_else(|_| {
-            let civil = plain.parse::<jiff::civil::DateTime>()?;
-            jiff::tz::Offset::UTC.to_timestamp(civil)
-        })
-        .map_err(|_| "expected an instant such as 2026-11-01T00:00:00Z, or a date".to_owned())?;
-    now_at(timestamp.as_second(), timestamp.subsec_nanosecond())
-        .ok_or_else(|| "that year is out of all reach".to_owned())
 }
 
 fn now_at(unix_s: i64, nanoseconds: i32) -> Option<Now> {

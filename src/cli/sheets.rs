@@ -5,7 +5,7 @@ use crate::output::screen_text::Style;
 use crate::output::summary::{self, Tally};
 use crate::output::{Form, csv, jsonl, reduce_text, screen_text};
 use crate::report::Verdict;
-use crate::rules::Selection;
+use crate::rules::{self, Selection};
 use crate::run::{self, Run, Wanted};
 use std::io::{self, BufWriter, IsTerminal, Write};
 use std::path::Path;
@@ -18,6 +18,10 @@ pub(super) enum Purpose {
 }
 
 pub(super) fn run(arguments: SheetArguments, purpose: Purpose) -> u8 {
+    if let Some(nothing) = none_left(&arguments.only, &arguments.except) {
+        let _ = writeln!(io::stderr(), "not done: {nothing}");
+        return NOT_DONE;
+    }
     let from_input =
         arguments.sheets.is_empty() || arguments.sheets.iter().any(|s| s == Path::new("-"));
     if from_input && io::stdin().is_terminal() {
@@ -47,13 +51,25 @@ pub(super) fn run(arguments: SheetArguments, purpose: Purpose) -> u8 {
     finish(written, status)
 }
 
+/// What to say where `--except` takes away everything that `--only` asks, or every rule there is.
+fn none_left(only: &[String], except: &[String]) -> Option<String> {
+    let left = rules::TABLE.iter().any(|rule| {
+        (only.is_empty() || only.iter().any(|o| o == rule.name))
+            && !except.iter().any(|e| e == rule.name)
+    });
+    (!left).then(|| {
+        "no rule is left to ask: --except takes away all that --only asks; leave one of them out"
+            .to_owned()
+    })
+}
+
 /// Data to standard output; what is for people goes there too only where nothing else does.
 fn show(run: &Run, form: Form, purpose: Purpose) -> io::Result<()> {
     let mut out = BufWriter::new(io::stdout().lock());
     match (form, purpose) {
         (Form::Text, Purpose::Screen) => {
             screen_text::write(run, style(&io::stdout()), &mut out)?;
-            summary::write(run, &mut out)?;
+            summary::write(run, style(&io::stdout()).width, &mut out)?;
             return out.flush();
         }
         (Form::Text, Purpose::Reduce) => reduce_text::write(run, &mut out)?,
@@ -65,7 +81,8 @@ fn show(run: &Run, form: Form, purpose: Purpose) -> io::Result<()> {
     if form == Form::Text {
         let _ = reduce_text::write_findings(run, &mut people);
     }
-    let _ = summary::write(run, &mut people);
+    let _ = summary::write_unread(run, &mut people);
+    let _ = summary::write(run, style(&io::stderr()).width, &mut people);
     let _ = people.flush();
     Ok(())
 }
@@ -84,7 +101,11 @@ fn status(run: &Run, stop_at: StopAt) -> u8 {
 pub(super) fn style(stream: &impl IsTerminal) -> Style {
     let set = |name: &str| std::env::var_os(name).is_some_and(|v| !v.is_empty());
     let dumb = std::env::var_os("TERM").is_some_and(|t| t == "dumb");
-    let columns = std::env::var("COLUMNS").ok().and_then(|c| c.parse().ok());
+    let said = std::env::var("COLUMNS").ok().and_then(|c| c.parse().ok());
+    let columns = said.or_else(|| {
+        let size = terminal_size::terminal_size().filter(|_| stream.is_terminal());
+        size.map(|(width, _)| usize::from(width.0).min(120))
+    });
     Style {
         colour: stream.is_terminal() && !set("NO_COLOR") && !dumb,
         width: columns.unwrap_or(100usize).clamp(40, 200),

@@ -1,7 +1,7 @@
 //! `colure sites`: the register, and what it makes of a written site.
 
 use super::{ALL_WELL, NOT_DONE, SOMETHING_FOUND, finish, sheets};
-use crate::house::angle::{self, Axis, Degrees, wrap_longitude};
+use crate::house::angle::{self, AngleError, Axis, Degrees, wrap_longitude};
 use crate::house::{House, RegisteredSite};
 use crate::output::plain::one_line;
 use crate::output::screen_text::write_house_error;
@@ -87,15 +87,24 @@ fn written(words: &str, house: &House) -> (String, u8) {
     if let Some(site) = house.site(words) {
         return (format!("{}\n", described(site)), ALL_WELL);
     }
-    if let Some((latitude, longitude)) = pair(words) {
+    let bare = without_elevation(words);
+    if let Some((latitude, longitude)) = pair(bare) {
         let mut text = format!("read as {}\n", coordinates(latitude.value, longitude.value));
         if let Some((site, km)) = nearest(house, latitude.value, longitude.value) {
+            let apart = match km {
+                km if km < 1.0 => String::new(),
+                km => format!(", {km:.0} km off"),
+            };
             text.push_str(&format!(
-                "nearest site of the register, {km:.0} km off: {}\n",
+                "nearest site of the register{apart}: {}\n",
                 described(site)
             ));
         }
         return (text, ALL_WELL);
+    }
+    if let Some(what) = what_fails(bare) {
+        let text = format!("“{}” cannot be read: {what}\n", one_line(words, 60));
+        return (text, SOMETHING_FOUND);
     }
     let near = house.nearest_sites(words);
     let shown = one_line(words, 60);
@@ -113,26 +122,64 @@ fn written(words: &str, house: &House) -> (String, u8) {
     )
 }
 
+/// The words without a height after the coordinates: `1690 m`.
+fn without_elevation(words: &str) -> &str {
+    let trimmed = words.trim_end();
+    let Some(before) = trimmed.strip_suffix(['m', 'M']).map(str::trim_end) else {
+        return words;
+    };
+    let rest = before.trim_end_matches(|c: char| c.is_ascii_digit() || c == '.');
+    // "54 18 m" would be minutes: a height stands after both coordinates
+    let height = rest.len() < before.len() && rest.ends_with([' ', ',']);
+    let rest = rest.trim_end_matches([' ', ',', '-', '−']);
+    if height && pair(rest).is_some() {
+        rest
+    } else {
+        words
+    }
+}
+
 /// Two coordinates parted by a comma, or after the letter of the first.
 fn pair(words: &str) -> Option<(Degrees, Degrees)> {
-    let cuts = words
-        .char_indices()
-        .filter(|(_, c)| matches!(c, ',' | ';' | 'N' | 'S' | 'n' | 's') || c.is_whitespace())
-        .map(|(i, c)| {
-            if matches!(c, ',' | ';') {
-                (i, i + 1)
-            } else {
-                (i + c.len_utf8(), i + c.len_utf8())
-            }
-        });
-    for (end, start) in cuts {
-        let first = angle::read(&words[..end], Axis::Latitude);
-        let second = angle::read(&words[start..], Axis::Longitude);
-        if let (Ok(latitude), Ok(longitude)) = (first, second) {
-            return Some((latitude, longitude));
-        }
+    cuts(words).into_iter().find_map(|(first, second)| {
+        let latitude = angle::read(first, Axis::Latitude).ok()?;
+        let longitude = angle::read(second, Axis::Longitude).ok()?;
+        Some((latitude, longitude))
+    })
+}
+
+/// Why words that are meant as coordinates are none: the error of the half that fails, where the other half is right.
+fn what_fails(words: &str) -> Option<String> {
+    if words.chars().filter(char::is_ascii_digit).count() < 2 {
+        return None;
     }
-    None
+    let told = |error: AngleError, axis: Axis| {
+        (!matches!(error, AngleError::Form(_))).then(|| format!("{}: {error}", axis.name()))
+    };
+    cuts(words).into_iter().find_map(|(first, second)| {
+        let latitude = angle::read(first, Axis::Latitude);
+        let longitude = angle::read(second, Axis::Longitude);
+        match (latitude, longitude) {
+            (Ok(_), Err(error)) => told(error, Axis::Longitude),
+            (Err(error), Ok(_)) => told(error, Axis::Latitude),
+            _ => None,
+        }
+    })
+}
+
+/// All ways to cut words in two: at a comma first, then after the letter of the first half, then at a blank.
+fn cuts(words: &str) -> Vec<(&str, &str)> {
+    let at = |wanted: fn(char) -> bool, kept: bool| {
+        let places = words.char_indices().filter(move |(_, c)| wanted(*c));
+        places.map(move |(i, c)| {
+            let end = if kept { i + c.len_utf8() } else { i };
+            (&words[..end], &words[i + c.len_utf8()..])
+        })
+    };
+    at(|c| matches!(c, ',' | ';'), false)
+        .chain(at(|c| matches!(c, 'N' | 'S' | 'n' | 's'), true))
+        .chain(at(char::is_whitespace, false))
+        .collect()
 }
 
 /// The nearest site and its distance, km, on a sphere of 6371 km.

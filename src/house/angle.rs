@@ -43,8 +43,16 @@ pub enum AngleError {
     #[error("“{0}” is not an angle")]
     Form(String),
     /// Minutes or seconds of 60 and more.
-    #[error("minutes and seconds go from 0 to below 60")]
-    Sexagesimal,
+    #[error("{value} {part}: {part} stop below 60")]
+    Sexagesimal {
+        /// What was written.
+        value: String,
+        /// `minutes` or `seconds`.
+        part: &'static str,
+    },
+    /// The letter O for a direction.
+    #[error("“O” is east in German and Dutch, west in the Romance languages: write E or W")]
+    EastOrWest,
     /// A compass letter of the other axis.
     #[error("“{0}” is a letter of the other coordinate")]
     OtherAxis(char),
@@ -120,7 +128,10 @@ pub fn read(word: &str, axis: Axis) -> Result<Degrees, AngleError> {
         }
         let n: f64 = number.parse().map_err(|_| form())?;
         if i > 0 && n >= 60.0 {
-            return Err(AngleError::Sexagesimal);
+            return Err(AngleError::Sexagesimal {
+                value: (*number).to_owned(),
+                part: if i == 1 { "minutes" } else { "seconds" },
+            });
         }
         let unit = [1.0, 60.0, 3600.0][i];
         value += n / unit;
@@ -157,6 +168,7 @@ fn take_letter(word: &str, axis: Axis) -> Result<(String, Option<char>), AngleEr
             "s" | "south" => 'S',
             "e" | "east" => 'E',
             "w" | "west" => 'W',
+            "o" if axis == Axis::Longitude => return Err(AngleError::EastOrWest),
             _ => continue,
         };
         // `18s`: seconds, not south

@@ -9,6 +9,7 @@ pub const EXPECTED: &str =
 /// Reads the name of a frame; the year rule is that of the sheets (Besselian below 1984 unless a letter is written).
 pub fn frame_named(word: &str) -> Result<Frame, String> {
     let plain = word.trim().trim_matches(['(', ')']).to_lowercase();
+    let plain = plain.replace(['-', '_'], " ").replace(',', ".");
     let plain = plain.strip_prefix("equinox ").unwrap_or(&plain).trim();
     let (system, rest) = match plain.split_at_checked(4) {
         Some(("icrs", rest)) => (Some(System::Icrs), rest),
@@ -18,7 +19,7 @@ pub fn frame_named(word: &str) -> Result<Frame, String> {
             _ => (None, plain),
         },
     };
-    let rest = rest.trim_matches([' ', ',', '/']);
+    let rest = rest.trim_matches([' ', '.', '/']);
     let of_date = |system| {
         Ok(Frame {
             system,
@@ -26,7 +27,10 @@ pub fn frame_named(word: &str) -> Result<Frame, String> {
         })
     };
     match (system, rest) {
-        (None, "of date" | "date" | "mean" | "mean of date") => return of_date(System::Mean),
+        // the short names that telescope controls use for it: common practice, no source
+        (None, "of date" | "date" | "mean" | "mean of date" | "eod" | "jnow" | "j now") => {
+            return of_date(System::Mean);
+        }
         (None, "apparent" | "true of date" | "apparent of date") => {
             return of_date(System::Apparent);
         }
@@ -35,7 +39,7 @@ pub fn frame_named(word: &str) -> Result<Frame, String> {
         _ => {}
     }
     let (letter, number) = match rest.chars().next() {
-        Some(c @ ('j' | 'b')) => (Some(c), &rest[1..]),
+        Some(c @ ('j' | 'b')) => (Some(c), rest[1..].trim_start()),
         _ => (None, rest),
     };
     let well_formed = number.starts_with(|c: char| c.is_ascii_digit())

@@ -6,12 +6,13 @@
 
 use super::angle::{self, Axis};
 use super::frame::{self, frame_named};
-use super::mistake::{HouseError, Mistake, nearest};
-use super::{House, Observer, RegisteredSite, WhenMissing, objects};
+use super::mistake::{HouseError, Mistake, io_words, nearest};
+use super::{House, Observer, RegisteredSite, WhenMissing, objects, plain};
 use crate::report::Weight;
 use crate::span::Span;
 use serde::de::{self, DeserializeSeed, IgnoredAny, MapAccess, SeqAccess, Visitor};
 use std::borrow::Cow;
+use std::collections::HashMap;
 use std::fmt;
 use std::path::{Path, PathBuf};
 
@@ -25,29 +26,28 @@ pub fn load(path: &Path, rules: &[&str]) -> Result<House, HouseError> {
     let whole = |what: String, expected: &str| HouseError::whole(path.to_owned(), what, expected);
     let size = std::fs::metadata(path).map_err(|e| {
         whole(
-            format!("cannot be read: {e}"),
+            io_words(&e),
             "name an existing house file with --house, or leave the option out",
         )
     })?;
     if size.is_dir() {
         return Err(whole(
-            "is a folder".to_owned(),
+            "it is a folder".to_owned(),
             "name the house file in it, usually colure.yaml",
         ));
     }
     if size.len() > LONGEST_BYTES as u64 {
         return Err(whole(
-            format!("is {} KiB long", size.len() / 1024),
+            format!("it is {} KiB long", size.len() / 1024),
             "house rules are at most 64 KiB: put long lists of objects into CSV files and name them under known-objects",
         ));
     }
-    let bytes = std::fs::read(path)
-        .map_err(|e| whole(format!("cannot be read: {e}"), "check its permissions"))?;
+    let bytes = std::fs::read(path).map_err(|e| whole(io_words(&e), "check its permissions"))?;
     let text = String::from_utf8(bytes).map_err(|e| {
         let at = e.utf8_error().valid_up_to();
         let line = e.as_bytes()[..at].iter().filter(|b| **b == b'\n').count() + 1;
         whole(
-            format!("is not UTF-8 text: the first byte that is not stands in line {line}"),
+            format!("it is not UTF-8 text: the first byte that is not stands in line {line}"),
             "save it as UTF-8",
         )
     })?;
@@ -57,24 +57,37 @@ pub fn load(path: &Path, rules: &[&str]) -> Result<House, HouseError> {
         .map_or(text.clone(), str::to_owned);
     let folder = path.parent().unwrap_or(Path::new(""));
     let (mut house, mut mistakes, lists) = parse(&text, rules);
-    for (list, span) in lists {
-        house.object_lists.extend(absolute(&folder.join(&list)));
-        match objects::load(&folder.join(&list)) {
-            Ok(mut objects) => house.known_objects.append(&mut objects),
-            Err(problem) => mistakes.push(Mistake {
+    mistakes.sort_by_key(|m| m.span.map_or(0, |s| s.start));
+    let mut broken_lists = Vec::new();
+    for (name, span) in lists {
+        let file = folder.join(&name);
+        house.object_lists.extend(absolute(&file));
+        match objects::load(&file) {
+            Ok(mut list) => {
+                house.known_objects.append(&mut list.objects);
+                if !list.mistakes.is_empty() {
+                    mistakes.extend(list.mistakes.into_iter().map(|m| Mistake {
+                        list: Some(file.clone()),
+                        ..m
+                    }));
+                    broken_lists.push((file, list.text));
+                }
+            }
+            Err((what, expected)) => mistakes.push(Mistake {
+                list: None,
                 span,
-                what: format!("known-objects: {list}: {}", problem.what),
-                expected: problem.expected,
+                what: format!("known-objects: {name}: {what}"),
+                expected: expected.to_owned(),
             }),
         }
     }
     if mistakes.is_empty() {
         Ok(house)
     } else {
-        mistakes.sort_by_key(|m| m.span.map_or(0, |s| s.start));
         Err(HouseError {
             path: path.to_owned(),
             text,
+            lists: broken_lists,
             mistakes,
         })
     }
@@ -171,16 +184,86 @@ fn yaml_mistake(error: &serde_yaml::Error, text: &str) -> Mistake {
             Span::new(start + from, start + from + word.len())
         });
     let full = error.to_string();
-    let what = match full.find(" at line ") {
-        Some(end) => full[..end].to_owned(),
-        None => full,
+    let said = match full.find(" at line ") {
+        Some(end) => &full[..end],
+        None => &full,
     };
+    let (what, expected) = in_words(said, span, text);
     Mistake {
+        list: None,
         span,
-        what: format!("this is not the YAML of house rules: {what}"),
-        expected: "check indentation, colons and brackets, and quote text that holds “: ” or “#”"
-            .to_owned(),
+        what,
+        expected: expected.to_owned(),
     }
+}
+
+/// What the YAML reader says, in words for somebody who has never heard of it, and what to do.
+fn in_words(said: &str, span: Option<Span>, text: &str) -> (String, &'static str) {
+    let at = span.map_or(0, |s| s.start.min(text.len()));
+    let line_start = text[..at].rfind('\n').map_or(0, |i| i + 1);
+    let line = text[line_start..].lines().next().unwrap_or("");
+    let number = text[..line_start].matches('\n').count() + 1;
+    let indent = &line[..line.len() - line.trim_start().len()];
+    if indent.contains('\t') {
+        return (
+            format!("line {number} is indented with a tab"),
+            "use spaces: YAML takes no tabs there",
+        );
+    }
+    if let Some((_, wrong)) = said.split_once("invalid type: ") {
+        let (found, wanted) = wrong
+            .split_once(", expected ")
+            .unwrap_or((wrong, "something else"));
+        let found = match found {
+            "sequence" => "a list".to_owned(),
+            "map" => "a group of `key: value` pairs".to_owned(),
+            "unit value" => "nothing".to_owned(),
+            other => other
+                .split_once(' ')
+                .map_or(other, |(_, word)| word)
+                .replace('"', "`"),
+        };
+        return (
+            format!("{found} stands where {wanted} belongs"),
+            "write it as the README shows under “House rules and the site register”",
+        );
+    }
+    if said.contains("cannot start any token") {
+        return (
+            format!("line {number}: a value cannot begin with this character"),
+            "put the value in quotes: \"…\"",
+        );
+    }
+    if said.contains("mapping values are not allowed") {
+        return (
+            format!(
+                "line {number} has a colon too many, or its indentation fits no line before it"
+            ),
+            "quote text that holds “: ”, and give keys of one level the same indentation",
+        );
+    }
+    if said.contains("did not find expected ',' or") {
+        return (
+            format!("line {number}: a comma or the closing bracket is missing before this"),
+            "close every { with } and every [ with ], with commas between",
+        );
+    }
+    if said.contains("did not find expected") || said.contains("could not find expected") {
+        return (
+            format!("line {number} does not fit what stands before it"),
+            "check the indentation (spaces, the same for keys of one level), colons, quotes and brackets",
+        );
+    }
+    if said.contains("recursion limit") {
+        return (
+            "the brackets are nested too deep".to_owned(),
+            "house rules are at most four levels deep",
+        );
+    }
+    (
+        format!("this is not the YAML of house rules: {said}"),
+        "check indentation, colons and brackets, and quote text that holds “: ” or “#”",
+    )
 }
 
 // ---------------------------------------------------------------------------------------------- words and sections
@@ -199,6 +282,7 @@ impl Reading<'_> {
     fn mistake(&mut self, at: &Word, what: impl Into<String>, expected: impl Into<String>) {
         let span = at.span(self);
         self.mistakes.push(Mistake {
+            list: None,
             span,
             what: what.into(),
             expected: expected.into(),
@@ -232,10 +316,18 @@ impl Reading<'_> {
             && digits.chars().all(|c| c.is_ascii_digit() || c == '.');
         match body.parse::<f64>() {
             Ok(value) if well_formed && (low..=high).contains(&value) => Some(value),
-            _ => {
+            value => {
+                let what = match value {
+                    Ok(value) if well_formed && value < low => {
+                        format!("{} is too low for the {what}", word.text())
+                    }
+                    Ok(_) if well_formed => format!("{} is too high for the {what}", word.text()),
+                    _ => format!("`{}` is no {what}", word.text()),
+                };
+                let low = low.to_string().replace('-', "−");
                 self.mistake(
                     word,
-                    format!("`{}` is no {what}", word.text()),
+                    what,
                     format!("expected a number from {low} to {high}"),
                 );
                 None
@@ -421,15 +513,27 @@ struct Draft<'de> {
     house: House,
     /// Sites that observers name, checked once all sites are known.
     observer_sites: Vec<Word<'de>>,
+    /// Sites with mistakes of their own: not in the register, and still no unknown names.
+    broken_sites: Vec<String>,
+    /// The names and aliases of sites, each with the number of its site.
+    site_names: Vec<(usize, Word<'de>)>,
+    /// The names of observers, numbered.
+    observer_names: Vec<(usize, Word<'de>)>,
 }
 
 impl<'de> Draft<'de> {
     fn check(&mut self, reading: &mut Reading) {
+        named_once(&self.site_names, "site", "sites", reading);
+        named_once(&self.observer_names, "observer", "observers", reading);
         for site in &self.observer_sites {
-            if self.house.site(site.text()).is_none() {
+            let wanted = plain(site.text());
+            let broken = self.broken_sites.iter().any(|s| plain(s) == wanted);
+            if self.house.site(site.text()).is_none() && !broken {
                 let names: Vec<&str> = self.house.sites.iter().map(|s| s.name.as_str()).collect();
-                let near = self.house.nearest_sites(site.text());
-                let expected = match near.first() {
+                let broken = self.broken_sites.iter().map(String::as_str);
+                let near = self.house.nearest_sites(site.text()).into_iter().next();
+                let near = near.or_else(|| nearest(site.text(), broken).map(str::to_owned));
+                let expected = match near {
                     Some(near) => format!("did you mean `{near}`?"),
                     None if names.is_empty() => "add it under sites".to_owned(),
                     None => format!("the register has: {}", names.join(", ")),
@@ -441,6 +545,37 @@ impl<'de> Draft<'de> {
                 );
             }
         }
+    }
+}
+
+/// Tells names that differ only in case, accents or marks, at each place but the first, which is told once.
+fn named_once(names: &[(usize, Word)], one: &str, many: &str, reading: &mut Reading) {
+    let mut first: HashMap<String, (usize, bool)> = HashMap::new();
+    let mut told: Vec<(usize, usize)> = Vec::new();
+    for (k, (owner, word)) in names.iter().enumerate() {
+        let before = first.entry(plain(word.text())).or_insert((k, false));
+        if names[before.0].0 == *owner {
+            continue;
+        }
+        if !before.1 {
+            told.push((before.0, k));
+            before.1 = true;
+        }
+        told.push((k, before.0));
+    }
+    // an alias unfolded again and again is one mistake
+    told.truncate(20);
+    for (here, there) in told {
+        let (here, there) = (&names[here].1, &names[there].1);
+        reading.mistake(
+            here,
+            format!(
+                "`{}` and `{}` are one name for two {many}: case, accents and marks do not count",
+                here.text(),
+                there.text()
+            ),
+            format!("give each {one} a name of its own"),
+        );
     }
 }
 
@@ -468,7 +603,7 @@ impl<'de> Section<'de> for Draft<'de> {
             "equinox" => section(map, &mut EquinoxSection(&mut self.house), reading),
             "horizon" => section(map, &mut HorizonSection(&mut self.house), reading),
             "weights" => section(map, &mut WeightsSection(&mut self.house), reading),
-            "sites" => section(map, &mut SitesSection(&mut self.house), reading),
+            "sites" => section(map, &mut SitesSection(self), reading),
             "observers" => section(map, &mut ObserversSection(self), reading),
             "known-objects" => {
                 for list in map.next_value_seed(WordsSeed(reading))? {
@@ -606,12 +741,16 @@ impl<'de> Section<'de> for WeightsSection<'_> {
             "reject" => Some(Weight::Reject),
             "off" => None,
             other => {
-                let near = nearest(other, ["note", "query", "reject", "off"])
+                // words this short are all alike: a letter or two, and no more
+                let lower = other.to_lowercase();
+                let near = ["note", "query", "reject", "off"]
+                    .into_iter()
+                    .find(|w| strsim::damerau_levenshtein(&lower, w) <= w.len() / 3)
                     .map_or(String::new(), |near| format!("did you mean `{near}`? "));
                 reading.mistake(
                     &value,
                     format!("`{other}` is no weight"),
-                    format!("{near}expected note, query, reject or off"),
+                    format!("{near}A weight is note, query, reject or off"),
                 );
                 return Ok(());
             }
@@ -621,9 +760,9 @@ impl<'de> Section<'de> for WeightsSection<'_> {
     }
 }
 
-struct SitesSection<'a>(&'a mut House);
+struct SitesSection<'a, 'de>(&'a mut Draft<'de>);
 
-impl<'de> Section<'de> for SitesSection<'_> {
+impl<'de> Section<'de> for SitesSection<'_, 'de> {
     fn place(&self) -> String {
         "sites".to_owned()
     }
@@ -637,34 +776,50 @@ impl<'de> Section<'de> for SitesSection<'_> {
         let mut site = SiteSection::new(key.text());
         let before = reading.mistakes.len();
         section(map, &mut site, reading)?;
+        let draft = &mut *self.0;
+        let number = draft.site_names.len();
+        let names = std::iter::once(key.clone()).chain(site.aliases);
+        draft.site_names.extend(names.map(|name| (number, name)));
         match (site.latitude, site.longitude) {
-            (Some(latitude), Some(longitude)) => self.0.sites.push(RegisteredSite {
+            (Some(latitude), Some(longitude)) => draft.house.sites.push(RegisteredSite {
                 latitude_deg: latitude.value,
                 longitude_deg: longitude.value,
                 step_deg: latitude.step.max(longitude.step),
                 ..site.site
             }),
-            // its own coordinates are already complained of
-            _ if reading.mistakes.len() > before => {}
-            _ => reading.mistake(
-                key,
-                format!("the site `{}` needs latitude and longitude", key.text()),
-                "write { latitude: 54°18.6′ N, longitude: 3°01′ W, elevation: 240 m, zone: Europe/London }",
-            ),
+            written => {
+                draft.broken_sites.push(site.site.name);
+                draft.broken_sites.extend(site.site.aliases);
+                // its own coordinates may already be complained of
+                if reading.mistakes.len() == before {
+                    let missing = match written {
+                        (Some(_), None) => "its longitude",
+                        (None, Some(_)) => "its latitude",
+                        _ => "latitude and longitude",
+                    };
+                    reading.mistake(
+                        key,
+                        format!("the site `{}` needs {missing}", key.text()),
+                        "write { latitude: 54°18.6′ N, longitude: 3°01′ W, elevation: 240 m, zone: Europe/London }",
+                    );
+                }
+            }
         }
         Ok(())
     }
 }
 
-struct SiteSection {
+struct SiteSection<'de> {
     site: RegisteredSite,
+    aliases: Vec<Word<'de>>,
     latitude: Option<angle::Degrees>,
     longitude: Option<angle::Degrees>,
 }
 
-impl SiteSection {
-    fn new(name: &str) -> SiteSection {
+impl<'de> SiteSection<'de> {
+    fn new(name: &str) -> SiteSection<'de> {
         SiteSection {
+            aliases: Vec::new(),
             site: RegisteredSite {
                 name: name.to_owned(),
                 aliases: Vec::new(),
@@ -682,7 +837,7 @@ impl SiteSection {
 
 const SITE_KEYS: &[&str] = &["latitude", "longitude", "elevation", "zone", "aliases"];
 
-impl<'de> Section<'de> for SiteSection {
+impl<'de> Section<'de> for SiteSection<'de> {
     fn place(&self) -> String {
         format!("the site `{}`", self.site.name)
     }
@@ -741,7 +896,9 @@ impl<'de> Section<'de> for SiteSection {
                 }
             }
             "aliases" => {
-                for alias in map.next_value_seed(WordsSeed(reading))? {
+                self.aliases = map.next_value_seed(WordsSeed(reading))?;
+                for alias in &mut self.aliases {
+                    alias.near = key.span(reading);
                     self.site.aliases.push(alias.text().to_owned());
                 }
             }
@@ -774,6 +931,8 @@ impl<'de> Section<'de> for ObserversSection<'_, 'de> {
             letters_to: None,
         };
         section(map, &mut observer, reading)?;
+        let number = self.0.observer_names.len();
+        self.0.observer_names.push((number, key.clone()));
         self.0.house.observers.push(Observer {
             name: observer.name,
             site: observer.site.as_ref().map(|s| s.text().to_owned()),

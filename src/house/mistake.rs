@@ -6,7 +6,9 @@ use std::path::PathBuf;
 /// One mistake in a house file.
 #[derive(Clone, PartialEq, Debug)]
 pub struct Mistake {
-    /// Where: bytes of the file's text. `None` where the whole file is meant.
+    /// The object list it stands in; `None` for the house file itself.
+    pub list: Option<PathBuf>,
+    /// Where: bytes of that file's text. `None` where the whole file is meant.
     pub span: Option<Span>,
     /// What is wrong, with the word.
     pub what: String,
@@ -22,6 +24,8 @@ pub struct HouseError {
     pub path: PathBuf,
     /// Its text, as far as it could be read.
     pub text: String,
+    /// The object lists in which there are mistakes, and their texts.
+    pub lists: Vec<(PathBuf, String)>,
     /// Its mistakes in the order of the file; never empty.
     pub mistakes: Vec<Mistake>,
 }
@@ -36,7 +40,9 @@ impl HouseError {
         HouseError {
             path,
             text: String::new(),
+            lists: Vec::new(),
             mistakes: vec![Mistake {
+                list: None,
                 span: None,
                 what: what.into(),
                 expected: expected.into(),
@@ -57,4 +63,19 @@ pub fn nearest<'a>(word: &str, right: impl IntoIterator<Item = &'a str>) -> Opti
         .filter(|(score, _)| *score > 0.6)
         .max_by(|a, b| a.0.total_cmp(&b.0))
         .map(|(_, w)| w)
+}
+
+/// What the system says of a file, in words that help.
+pub fn io_words(error: &std::io::Error) -> String {
+    use std::io::ErrorKind;
+    match error.kind() {
+        ErrorKind::NotFound => "there is no such file".to_owned(),
+        ErrorKind::PermissionDenied => "it may not be read".to_owned(),
+        ErrorKind::IsADirectory => "it is a folder".to_owned(),
+        _ => {
+            let full = error.to_string();
+            let words = full.split(" (os error").next().unwrap_or_default();
+            format!("it cannot be read: {words}")
+        }
+    }
 }

@@ -8,7 +8,7 @@ pub mod objects;
 mod register;
 
 pub use load::{LONGEST_BYTES, absolute, load, nearest_house, object_lists, parse};
-pub use mistake::{HouseError, Mistake, nearest};
+pub use mistake::{HouseError, Mistake, io_words, nearest};
 pub use register::plain;
 
 use crate::report::{Equinox, Frame, System, Weight};

@@ -102,7 +102,8 @@ fn join(parts: impl Iterator<Item = String>, between: &str) -> String {
 
 /// A cell that no spreadsheet takes for a formula: an apostrophe before one that begins like one.
 ///
-/// A signed number or coordinate (digits, blanks, points, colons and marks after its sign) stays as it is.
+/// A signed number or coordinate (digits, blanks, points, colons and marks after its sign) stays as it is, and so does
+/// a dash alone.
 pub fn guarded(cell: &str) -> Cow<'_, str> {
     let Some(first) = cell.chars().next() else {
         return Cow::Borrowed(cell);
@@ -111,7 +112,7 @@ pub fn guarded(cell: &str) -> Cow<'_, str> {
         && cell[1..]
             .chars()
             .all(|c| c.is_ascii_digit() || " .:°′″'\"".contains(c))
-        && cell.len() > 1;
+        && (cell.len() > 1 || first == '-');
     if matches!(first, '=' | '+' | '-' | '@' | '\t' | '\r' | '\n') && !coordinate {
         Cow::Owned(format!("'{cell}"))
     } else {

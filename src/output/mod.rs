@@ -1,12 +1,15 @@
 //! What leaves the house: one file a form. An output decides nothing; it shows what was found.
 
 pub mod csv;
+mod drawing;
 pub mod jsonl;
 pub mod plain;
 pub mod printed;
 pub mod record;
 pub mod reduce_text;
+mod report_words;
 pub mod screen_text;
+mod slips_text;
 pub mod summary;
 pub mod window;
 

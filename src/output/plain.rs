@@ -1,4 +1,7 @@
-//! Words of a sheet made harmless for a terminal: control and bidirectional characters replaced by one of equal length.
+//! Words of a sheet made harmless for a terminal: control and bidirectional characters replaced by one of equal length;
+//! and its lines broken to a width.
+
+use unicode_width::UnicodeWidthStr;
 
 /// The character that stands for one a terminal must not see; `None` where it may pass.
 pub fn stand_in(c: char) -> Option<char> {
@@ -34,4 +37,28 @@ pub fn one_line(text: &str, most: usize) -> String {
         line.push('…');
     }
     line
+}
+
+/// A text in lines of at most `width` columns, broken at blanks: `first` stands before the first, `rest` before the others.
+///
+/// A word longer than a line stays whole: a path or a name must be copied in one piece.
+pub fn wrapped(text: &str, first: &str, rest: &str, width: usize) -> String {
+    let mut lines = String::from(first);
+    let (mut column, mut fresh) = (first.width(), true);
+    for word in text.split(' ').filter(|w| !w.is_empty()) {
+        let wide = word.width();
+        if !fresh && column + 1 + wide > width {
+            lines.push('\n');
+            lines.push_str(rest);
+            (column, fresh) = (rest.width(), true);
+        }
+        if !fresh {
+            lines.push(' ');
+            column += 1;
+        }
+        lines.push_str(word);
+        column += wide;
+        fresh = false;
+    }
+    lines
 }

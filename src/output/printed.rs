@@ -11,9 +11,14 @@ struct LastUnit {
     decimals: u32,
 }
 
+/// Most decimals of a second ever printed: beyond a microsecond there is no position, only a number copied out of a program.
+const MOST_DECIMALS: u32 = 6;
+/// A step finer than this on the sky was not written: the right ascension of a place at the pole has none, arcsec.
+const NO_STEP_ARCSEC: f64 = 1e-6;
+
 /// All forms from fine to coarse: seconds, minutes, whole units, each with decimals or without.
 fn forms() -> impl Iterator<Item = LastUnit> {
-    let seconds = (0..=9).rev().map(|decimals| (3600, decimals));
+    let seconds = (0..=MOST_DECIMALS).rev().map(|decimals| (3600, decimals));
     let minutes = [(60, 1), (60, 0)];
     let wholes = [(1, 1), (1, 0)];
     seconds
@@ -73,7 +78,11 @@ fn sexagesimal(units: u64, form: LastUnit, marks: [&str; 3]) -> String {
 pub fn ra(reduced: &Reduced) -> String {
     // RA units shrink towards the poles; at the pole itself any form is fine enough
     let cos = reduced.dec_deg.to_radians().cos().abs().max(1e-6);
-    let form = form_for(reduced.ra_step_on_sky_arcsec, 54_000.0 * cos);
+    let step = match reduced.ra_step_on_sky_arcsec {
+        none if none < NO_STEP_ARCSEC => reduced.dec_step_arcsec,
+        step => step,
+    };
+    let form = form_for(step, 54_000.0 * cos);
     let per_hour = form.per_whole * 10u64.pow(form.decimals);
     let hours = reduced.ra_deg.rem_euclid(360.0) / 15.0;
     let units = (hours * per_hour as f64).round() as u64 % (24 * per_hour);

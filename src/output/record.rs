@@ -329,6 +329,17 @@ fn rounded(value: f64, decimals: i32) -> f64 {
     }
 }
 
+/// Words without the full stop or comma of the sentence they end.
+fn without_stop(words: &str) -> &str {
+    let trimmed = words.trim_end_matches(|c: char| ".,;:".contains(c) || c.is_whitespace());
+    // "10 p.m." keeps its own
+    let own = trimmed.to_ascii_lowercase();
+    if words.len() > trimmed.len() && (own.ends_with("p.m") || own.ends_with("a.m")) {
+        return &words[..=trimmed.len()];
+    }
+    trimmed
+}
+
 /// A rounded angle that must stay below 360.
 fn turn(value_deg: f64) -> f64 {
     let r = rounded(value_deg, 10);
@@ -353,7 +364,10 @@ impl ReportRecord {
             stated: Stated {
                 position: words(report.position.span),
                 equinox: report.equinoxes.first().map(|(tag, _)| words(tag.span)),
-                instant: report.instants.first().map(|(i, _)| words(i.span)),
+                instant: report
+                    .instants
+                    .first()
+                    .map(|(i, _)| without_stop(&words(i.span)).to_owned()),
                 site: report.site.as_ref().map(|(s, _)| words(s.span)),
             },
             read: meant.read.as_ref().map(read),

@@ -2,8 +2,9 @@
 
 use super::plain::one_line;
 use super::printed;
+use super::report_words::called;
 use super::summary::frame_name;
-use crate::report::Examined;
+use crate::report::{Examined, Role};
 use crate::run::Run;
 use std::io::{self, Write};
 use unicode_width::UnicodeWidthStr;
@@ -38,12 +39,10 @@ pub fn write(run: &Run, out: &mut impl Write) -> io::Result<()> {
 fn row(examined: &Examined) -> [String; 6] {
     let (report, meant) = (&examined.report, &examined.meant);
     let dash = || "-".to_owned();
+    let named = report.object.is_some() || report.role != Role::Measured;
     let reduced = meant.reduced.as_ref();
     [
-        report
-            .object
-            .as_ref()
-            .map_or_else(dash, |o| one_line(&o.value, 40)),
+        if named { called(report) } else { dash() },
         reduced.map_or_else(dash, printed::ra),
         reduced.map_or_else(dash, printed::dec),
         reduced.map_or_else(|| "not reduced".to_owned(), |r| frame_name(r.frame)),
@@ -70,12 +69,12 @@ pub fn write_findings(run: &Run, out: &mut impl Write) -> io::Result<()> {
         let name = super::screen_text::shown_name(&sheet.name);
         let of_reports = sheet_run.examined.iter().flat_map(|e| &e.findings);
         for finding in of_reports.chain(&sheet_run.remarks) {
-            let (line, column) = sheet.line_column(finding.primary.start);
+            let (line, _) = sheet.line_column(finding.primary.start);
             let place = super::plain::harmless(name);
             let message = one_line(&super::record::message(finding), 400);
             writeln!(
                 out,
-                "{place}:{line}:{column}: {}: {}: {message}",
+                "{place}, line {line}: {}: {message} ({})",
                 finding.weight.name(),
                 finding.rule
             )?;

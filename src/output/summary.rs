@@ -1,17 +1,17 @@
 //! The last lines of a run for people: how many reports, which verdicts, and the caution about the Sun.
 
-use super::plain::harmless;
+use super::plain::{harmless, wrapped};
 use super::screen_text::{Style, shown_name, write_house_error};
-use crate::report::{Frame, System, Verdict};
+use crate::report::{Frame, Role, System, Verdict};
 use crate::run::{Failure, Run};
 use std::io::{self, Write};
 
 /// Within this of the Sun the caution is given, degrees: that of the rule `near-sun`.
 const NEAR_SUN_DEG: f64 = 15.0;
 
-/// The usual caution. Local rules for solar observing come before it.
-pub const SUN_CAUTION: &str = "Caution: never point a telescope, binoculars or a finder near the Sun without a proper solar filter \
-over the front: a moment's look blinds. Follow your own society's or observatory's rules.";
+/// The usual caution, in the words of the rule `near-sun`. Local rules for solar observing come before it.
+pub const SUN_CAUTION: &str = "Caution: never look at or near the Sun through a telescope, a finder or binoculars, it blinds at once; \
+follow the safety rules of your site and club.";
 
 /// How many reports came to which verdict.
 #[derive(Clone, Copy, PartialEq, Eq, Debug, Default)]
@@ -67,12 +67,8 @@ pub fn frame_name(frame: Frame) -> String {
 /// What could not be done, and notes: each names the thing and what to do.
 pub fn write_failures(run: &Run, style: Style, out: &mut impl Write) -> io::Result<()> {
     for (name, note) in &run.notes {
-        writeln!(
-            out,
-            "note: {}: {}",
-            harmless(shown_name(name)),
-            harmless(note)
-        )?;
+        let text = format!("note: {}: {}", shown_name(name), note);
+        writeln!(out, "{}", wrapped(&harmless(&text), "", "  ", style.width))?;
     }
     for failure in &run.failures {
         match failure {
@@ -80,28 +76,60 @@ pub fn write_failures(run: &Run, style: Style, out: &mut impl Write) -> io::Resu
                 write_house_error(error, style, out)?;
                 writeln!(out, "The sheets under these house rules were not read.")?;
             }
-            Failure::Input { name, what, advice } => writeln!(
-                out,
-                "not done: {}: {}; {}",
-                harmless(name),
-                harmless(what),
-                harmless(advice)
-            )?,
+            Failure::Input { name, what, advice } => {
+                let text = format!("not done: {}: {what}; {advice}", shown_name(name));
+                writeln!(out, "{}", wrapped(&harmless(&text), "", "  ", style.width))?;
+            }
         }
     }
     Ok(())
 }
 
-/// The summary line, and the caution where something stands near the Sun and no finding has given it.
-pub fn write(run: &Run, out: &mut impl Write) -> io::Result<()> {
+/// The sheets in which no position was found: those who read a table or data are told here.
+pub fn write_unread(run: &Run, out: &mut impl Write) -> io::Result<()> {
+    for sheet in run.sheets.iter().filter(|s| s.examined.is_empty()) {
+        writeln!(
+            out,
+            "{}: no position found in it",
+            harmless(shown_name(&sheet.sheet.name))
+        )?;
+    }
+    Ok(())
+}
+
+/// The last lines: the caution where something stands near the Sun and no finding has given it, what was not asked, totals.
+pub fn write(run: &Run, width: usize, out: &mut impl Write) -> io::Result<()> {
+    let examined = || run.sheets.iter().flat_map(|s| &s.examined);
+    let mut line = |text: &str| writeln!(out, "{}", wrapped(text, "", "  ", width));
+    let uncautioned = examined().any(|e| {
+        e.meant
+            .horizon
+            .is_some_and(|h| h.sun_separation_deg < NEAR_SUN_DEG)
+            && !e.findings.iter().any(|f| f.rule == "near-sun")
+    });
+    if uncautioned {
+        line(SUN_CAUTION)?;
+    }
+    match (&run.only[..], &run.except[..]) {
+        ([], []) => {}
+        ([], except) => line(&format!("Not asked: {}.", except.join(", ")))?,
+        (only, except) => {
+            let asked: Vec<&str> = only
+                .iter()
+                .filter(|rule| !except.contains(rule))
+                .map(String::as_str)
+                .collect();
+            line(&format!("Asked only: {}.", asked.join(", ")))?;
+        }
+    }
+    let unchecked = examined()
+        .filter(|e| e.report.role == Role::Measured && e.meant.horizon.is_none())
+        .count();
     let tally = Tally::of(run);
-    let accepted = run
-        .sheets
-        .iter()
-        .flat_map(|s| &s.examined)
+    let accepted = examined()
         .filter(|e| e.verdict() == Verdict::Accept)
         .count();
-    let mut line = format!(
+    let mut total = format!(
         "{} in {}: {} accepted, {} to query, {} to reject",
         counted(tally.reports, "report", "reports"),
         counted(run.sheets.len(), "sheet", "sheets"),
@@ -110,17 +138,13 @@ pub fn write(run: &Run, out: &mut impl Write) -> io::Result<()> {
         tally.rejects
     );
     if !run.failures.is_empty() {
-        line.push_str(&format!("; {} not done", run.failures.len()));
+        total.push_str(&format!("; {} not done", run.failures.len()));
     }
-    writeln!(out, "{line}.")?;
-    let uncautioned = run.sheets.iter().flat_map(|s| &s.examined).any(|e| {
-        e.meant
-            .horizon
-            .is_some_and(|h| h.sun_separation_deg < NEAR_SUN_DEG)
-            && !e.findings.iter().any(|f| f.rule == "near-sun")
-    });
-    if uncautioned {
-        writeln!(out, "{SUN_CAUTION}")?;
+    total.push('.');
+    if unchecked > 0 {
+        line(&format!(
+            "{unchecked} could not be checked against the sky (no site, no time or no equinox)."
+        ))?;
     }
-    Ok(())
+    line(&total)
 }

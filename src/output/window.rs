@@ -12,9 +12,11 @@ use std::collections::BTreeMap;
 
 /// Lines shown before and after the words.
 const AROUND: usize = 1;
-/// Characters of a line shown at most.
-const WIDEST: usize = 110;
-/// Characters shown before the words where a line is cut.
+/// Columns of the screen that the numbers of lines and the room before them take.
+const MARGIN: usize = 14;
+/// Characters of a line shown at most, and at least.
+const WIDEST: (usize, usize) = (30, 110);
+/// Characters shown at most before the words where a line is cut.
 const LEAD: usize = 40;
 /// Lines of one span that are underlined at most.
 const TALLEST: usize = 4;
@@ -29,8 +31,6 @@ struct Line {
     lead: usize,
     /// What of the sheet it shows.
     source: Span,
-    /// The column of its first character, from 1.
-    column: usize,
 }
 
 /// The lines around some spans of a sheet.
@@ -39,11 +39,19 @@ pub struct Window {
     text: String,
     lines: Vec<Line>,
     labels: Vec<LabeledSpan>,
+    /// Characters of a line that are shown at most.
+    widest: usize,
 }
 
 impl Window {
-    /// The window on a primary span and related ones, each with a word or none.
-    pub fn on(sheet: &Sheet, name: &str, primary: Span, related: &[(Span, String)]) -> Window {
+    /// The window on a primary span and related ones, each with a word or none, for a screen of `width` columns.
+    pub fn on(
+        sheet: &Sheet,
+        name: &str,
+        primary: Span,
+        related: &[(Span, String)],
+        width: usize,
+    ) -> Window {
         let mut pieces = pieces(sheet, primary, None, true);
         for (span, word) in related {
             pieces.extend(pieces_of_related(sheet, *span, word));
@@ -66,6 +74,7 @@ impl Window {
             text: String::new(),
             lines: Vec::new(),
             labels: Vec::new(),
+            widest: width.saturating_sub(MARGIN).clamp(WIDEST.0, WIDEST.1),
         };
         for (number, focus) in wanted {
             window.add_line(sheet, number, focus);
@@ -79,18 +88,19 @@ impl Window {
     fn add_line(&mut self, sheet: &Sheet, number: usize, focus: Option<usize>) {
         let whole = sheet.line_span(number);
         let text = whole.of(&sheet.text);
+        let lead_most = (self.widest / 3).min(LEAD);
         let start = match focus {
             Some(at)
                 if text[..at.saturating_sub(whole.start).min(text.len())]
                     .chars()
-                    .nth(WIDEST - LEAD)
+                    .nth(self.widest - lead_most)
                     .is_some() =>
             {
-                back(text, at - whole.start, LEAD)
+                back(text, at - whole.start, lead_most)
             }
             _ => 0,
         };
-        let end = forth(text, start, WIDEST);
+        let end = forth(text, start, self.widest);
         let shown_start = self.text.len();
         let lead = if start > 0 { '…'.len_utf8() } else { 0 };
         if start > 0 {
@@ -103,13 +113,11 @@ impl Window {
         }
         // room to underline a place at the end of a line, or on an empty one
         self.text.push(' ');
-        let column = text[..start].chars().count() + 1;
         self.lines.push(Line {
             number,
             shown: Span::new(shown_start, self.text.len()),
             lead,
             source: Span::new(whole.start + start, whole.start + end),
-            column,
         });
         self.text.push('\n');
     }
@@ -179,20 +187,14 @@ impl SourceCode for Window {
             to += 1;
         }
         let shown = Span::new(self.lines[from].shown.start, self.lines[to].shown.end);
-        // asked without surroundings, miette wants the place of the words themselves
-        let column = if before == 0 {
-            let line = &self.lines[first];
-            let at = span.offset().max(line.shown.start + line.lead);
-            line.column - 1 + self.text[line.shown.start + line.lead..at].chars().count()
-        } else {
-            0
-        };
+        // asked without surroundings, miette wants the place of the words themselves, for the head of a snippet
+        let name = format!("{}, line {}", self.name, self.lines[first].number);
         Ok(Box::new(MietteSpanContents::new_named(
-            self.name.clone(),
+            name,
             &self.text.as_bytes()[shown.start..shown.end],
             (shown.start, shown.len()).into(),
             self.lines[from].number - 1,
-            column,
+            0,
             to - from,
         )))
     }

@@ -6,7 +6,7 @@ use super::run::Run;
 use super::scan::Kind;
 use super::text::Text;
 use super::words::Word;
-use crate::report::Angle;
+use crate::report::{Angle, Position};
 use crate::span::Spanned;
 
 impl Finder<'_, '_> {
@@ -23,9 +23,10 @@ impl Finder<'_, '_> {
                         .any(|w| p.means(*w)) =>
                 {
                     // "Sun" and "set" are other words too; a weekday or a verb blocks nothing
-                    return !p
+                    let other = p
                         .meanings()
                         .any(|w| matches!(w, Word::Weekday(_) | Word::Month(_)));
+                    return !other || self.atoms.get(k + 1).is_some_and(|a| a.is_mark(':'));
                 }
                 // coordinates of a site
                 Kind::Word(p)
@@ -49,32 +50,105 @@ impl Finder<'_, '_> {
         false
     }
 
-    /// "at", "position", "found" close before it on the line.
+    /// "at", "position", "found" close before it on the line, or closing the line above with a colon.
     pub(super) fn word_before(&self, i: usize) -> bool {
-        for k in (i.saturating_sub(5)..i).rev() {
+        const LEADING: [Word; 8] = [
+            Word::Position,
+            Word::At,
+            Word::Found,
+            Word::RoleReference,
+            Word::RolePointing,
+            Word::RoleCatalogued,
+            Word::RoleRegion,
+            Word::RoleMeasured,
+        ];
+        for k in (i.saturating_sub(8)..i).rev() {
             let atom = &self.atoms[k];
             match &atom.kind {
+                Kind::LineEnd if k > 0 && k + 1 == i && self.atoms[k - 1].is_mark(':') => {}
                 Kind::LineEnd | Kind::Mark(';' | '.') => return false,
-                Kind::Word(p)
-                    if [
-                        Word::Position,
-                        Word::At,
-                        Word::RoleReference,
-                        Word::RolePointing,
-                        Word::RoleCatalogued,
-                        Word::RoleRegion,
-                        Word::RoleMeasured,
-                    ]
-                    .iter()
-                    .any(|w| p.means(*w)) =>
-                {
-                    return true;
-                }
+                Kind::Word(p) if LEADING.iter().any(|w| p.means(*w)) => return true,
                 Kind::Word(_) | Kind::Plain | Kind::Mark(_) | Kind::Equinox(_) => {}
                 _ => return false,
             }
         }
         false
+    }
+
+    /// Galactic or ecliptic coordinates are named right before it.
+    pub(super) fn other_coordinates(&self, i: usize) -> bool {
+        (i.saturating_sub(7)..i)
+            .rev()
+            .take_while(|&k| !matches!(self.atoms[k].kind, Kind::LineEnd | Kind::Mark(';')))
+            .any(|k| self.atoms[k].means(Word::Galactic) || self.atoms[k].means(Word::Ecliptic))
+    }
+
+    /// A name's word right before it.
+    pub(super) fn name_right_before(&self, i: usize) -> bool {
+        i > 0
+            && match &self.atoms[i - 1].kind {
+                Kind::Plain => true,
+                Kind::Word(p) => p.means(Word::New) || p.means(Word::Object),
+                _ => false,
+            }
+    }
+
+    /// Few words after it on its line: the row of a list, not the middle of a sentence.
+    pub(super) fn short_tail(&self, end: usize) -> bool {
+        let mut words = 0;
+        for atom in &self.atoms[end.min(self.atoms.len())..] {
+            match &atom.kind {
+                Kind::LineEnd => break,
+                Kind::Mark(';' | '.') => break,
+                Kind::Word(p) if p.means(Word::NotAPosition) && !p.means(Word::At) => return false,
+                Kind::Word(p)
+                    if [
+                        Word::Equinox,
+                        Word::Epoch,
+                        Word::From,
+                        Word::At,
+                        Word::Magnitude,
+                        Word::Universal,
+                        Word::Site,
+                    ]
+                    .iter()
+                    .any(|w| p.means(*w)) => {}
+                Kind::Word(_) | Kind::Plain => words += 1,
+                Kind::Instant(_) | Kind::Site(_) => words = 0,
+                _ => {}
+            }
+        }
+        words <= 4
+    }
+
+    /// A number with a sign right after, over blanks alone.
+    pub(super) fn signed_after(&self, end: usize) -> bool {
+        let Some(atom) = self.atoms.get(end) else {
+            return false;
+        };
+        let gap = end > 0 && atom.span.start > self.atoms[end - 1].span.end;
+        gap && match &atom.kind {
+            Kind::Run(r) => {
+                r.sign.is_some() && (r.numbers.len() > 1 || r.numbers[0].0.whole_digits == 2)
+            }
+            Kind::Angle(a) => a.sign.is_some(),
+            _ => false,
+        }
+    }
+
+    /// "that is" or an equals sign stands between the last position and this one.
+    pub(super) fn says_form(&self, i: usize, from: usize) -> bool {
+        self.atoms[from.min(i)..i]
+            .iter()
+            .any(|a| a.means(Word::ThatIs) || a.is_mark('='))
+    }
+
+    /// Within two degrees of the position found last.
+    pub(super) fn close_to_last(&self, p: &Position) -> bool {
+        self.last
+            .as_ref()
+            .and_then(|l| super::forms::apart_deg(l, p))
+            .is_some_and(|d| d < 2.0)
     }
 
     /// "that is", "=" or a bracket opened right after a position: another form of it follows.
@@ -95,9 +169,9 @@ impl Finder<'_, '_> {
     }
 
     /// First on its line, or after a name and perhaps a colon or a date: the row of a list.
-    pub(super) fn named_line(&self, i: usize) -> bool {
+    pub(super) fn named_line(&self, i: usize, from: usize) -> bool {
         let mut words = 0;
-        for k in (0..i).rev() {
+        for k in (from..i).rev() {
             match &self.atoms[k].kind {
                 Kind::LineEnd => break,
                 Kind::Plain | Kind::Word(_) => words += 1,
@@ -107,6 +181,8 @@ impl Finder<'_, '_> {
                 | Kind::Run(_)
                 | Kind::Instant(_)
                 | Kind::Equinox(_) => {}
+                // a clock time at the head of a row
+                Kind::Angle(a) if a.sign.is_none() && a.parts().len() <= 3 && words == 0 => {}
                 _ => return false,
             }
         }

@@ -3,7 +3,7 @@
 /// The letter without case and accent; blanks of all kinds become one blank. Anything else stays as it is.
 pub fn fold(c: char) -> char {
     if c.is_ascii() {
-        return if c == '\t' {
+        return if matches!(c, '\t' | '\n' | '\r') {
             ' '
         } else {
             c.to_ascii_lowercase()

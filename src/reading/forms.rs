@@ -14,6 +14,10 @@ impl Finder<'_, '_> {
                 && self.other_form(last, &f)
             {
                 let tag = f.tags.first().copied();
+                // the tag after the second form speaks of both, unless the first has its own
+                if last.tags.is_empty() && notation(&last.position) != notation(&f.position) {
+                    last.tags.extend(tag);
+                }
                 last.other_forms.push((f.position, tag));
                 last.other_forms.extend(f.other_forms);
                 last.end = f.end;
@@ -69,7 +73,7 @@ fn notation(p: &Position) -> bool {
     p.first.is_some_and(|a| a.parts().len() > 1)
 }
 
-fn apart_deg(a: &Position, b: &Position) -> Option<f64> {
+pub(super) fn apart_deg(a: &Position, b: &Position) -> Option<f64> {
     let degrees = |p: &Position| {
         let ra = p.first?;
         let ra = if p.first_unit == Some(AngleUnit::Degrees) {

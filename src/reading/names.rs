@@ -1,7 +1,7 @@
 //! Names of objects: after their label, before the position on its line, or alone on the line above.
 
 use super::assemble::Reader;
-use super::position::Found;
+use super::parts::{Part, Scene};
 use super::scan::{Atom, Kind};
 use super::statements::Statements;
 use super::text::Text;
@@ -11,11 +11,14 @@ use crate::span::{Span, Spanned};
 
 impl Reader<'_> {
     /// A line that holds a name and nothing else.
-    pub(super) fn name_only(&self, all: &[Atom], line: usize) -> bool {
-        let words: Vec<&Atom> = all
-            .iter()
-            .filter(|a| a.line == line && !matches!(a.kind, Kind::LineEnd))
-            .collect();
+    pub(super) fn name_only(&self, words: &[Atom]) -> bool {
+        const STATEMENTS: [Word; 5] = [
+            Word::Date,
+            Word::Site,
+            Word::Observer,
+            Word::Equinox,
+            Word::Time,
+        ];
         !words.is_empty()
             && words.len() <= 9
             && words
@@ -25,18 +28,7 @@ impl Reader<'_> {
                 Kind::Plain
                 | Kind::Run(_)
                 | Kind::Mark('=' | '(' | ')' | '-' | '*' | '+' | '/' | '#' | '.') => true,
-                Kind::Word(p) => {
-                    ![
-                        Word::Date,
-                        Word::Site,
-                        Word::Observer,
-                        Word::Equinox,
-                        Word::Time,
-                    ]
-                    .iter()
-                    .any(|w| p.means(*w))
-                        || p.means(Word::New)
-                }
+                Kind::Word(p) => !STATEMENTS.iter().any(|w| p.means(*w)) || p.means(Word::New),
                 _ => false,
             })
     }
@@ -44,15 +36,15 @@ impl Reader<'_> {
     /// The object's name: after its label; else before the position on its line; else the line above.
     pub(super) fn object(
         &self,
-        all: &[Atom],
-        f: &Found,
-        from: usize,
-        to: usize,
+        scene: &Scene,
+        n: usize,
+        part: &Part,
         said: &Statements,
         role: Option<Role>,
     ) -> Option<Spanned<String>> {
-        let line = all[f.first].line;
-        let own: Option<&Spanned<String>> = said
+        let all = scene.all;
+        let f = &scene.found[n];
+        let own = said
             .objects
             .iter()
             .rfind(|o| o.span.start < f.position.span.start)
@@ -60,13 +52,11 @@ impl Reader<'_> {
         if let Some(o) = own {
             return Some(o.clone());
         }
-        let start = all.iter().position(|a| a.line == line)?;
+        let line = scene.lines_of(f).0;
+        let start = scene.line_start(line).max(part.lead);
         // a second position on a line takes the words since the first
-        let since = all[start..f.first]
-            .iter()
-            .rposition(|a| matches!(a.kind, Kind::Mark(';')) && f.first - start > 12)
-            .map_or(start, |k| start + k + 1);
-        let mut words: Vec<usize> = (since..f.first).collect();
+        let before = n.checked_sub(1).map_or(0, |k| scene.found[k].end);
+        let mut words: Vec<usize> = (start.max(before)..f.first).collect();
         // after the last sentence end
         if let Some(k) = words.iter().rposition(|&k| {
             all[k].is_mark('.')
@@ -77,25 +67,37 @@ impl Reader<'_> {
         }) {
             words.drain(..=k);
         }
-        let role_only = matches!(
+        if matches!(
             role,
             Some(Role::Reference | Role::Pointing | Role::Catalogued | Role::Region)
-        );
-        if !role_only && let Some(name) = self.name_in(all, &words) {
-            return Some(name);
-        }
-        if role_only {
+        ) {
             return None;
         }
+        if let Some(mut name) = self.name_in(all, &words) {
+            // "M 57 18 53 35.1": the numbers of a run that are not the right ascension's belong to the name
+            let position = f.position.first.map_or(0, |a| a.span.start);
+            let run = all[f.first].span.start;
+            let touches = words
+                .last()
+                .is_some_and(|&k| all[k].span.end == name.span.end);
+            if touches && run < position && matches!(all[f.first].kind, Kind::Run(_)) {
+                let extra = Span::new(name.span.start, position)
+                    .of(self.text)
+                    .trim_end();
+                name = Spanned::new(
+                    extra.to_string(),
+                    Span::new(name.span.start, name.span.start + extra.len()),
+                );
+            }
+            return Some(name);
+        }
         // the line above, if it is a lone name
-        let above = all[from..to]
-            .iter()
-            .map(|a| a.line)
-            .filter(|l| *l < line)
-            .max()?;
-        if above + 1 == line && self.name_only(all, above) {
-            let words: Vec<usize> = (0..all.len())
-                .filter(|&k| all[k].line == above && !matches!(all[k].kind, Kind::LineEnd))
+        if line > scene.first_line
+            && self.name_only(scene.line(line - 1))
+            && scene.line_start(line - 1) >= part.from
+        {
+            let words: Vec<usize> = (scene.line_start(line - 1)..scene.line_start(line))
+                .filter(|&k| !matches!(all[k].kind, Kind::LineEnd))
                 .collect();
             return self.name_in(all, &words);
         }
@@ -193,7 +195,12 @@ impl Reader<'_> {
             Word::ThatIs,
             Word::All,
         ];
-        LEADING.iter().any(|w| a.means(*w)) && !(a.means(Word::New) && !a.means(Word::Found))
+        let words = a.span.of(self.text);
+        // "Star A", "Star I": a single capital is a name
+        let letter = words.chars().count() == 1 && words.starts_with(char::is_uppercase);
+        LEADING.iter().any(|w| a.means(*w))
+            && !letter
+            && !(a.means(Word::New) && !a.means(Word::Found))
     }
 }
 

@@ -157,6 +157,10 @@ pub fn part_gap(input: Text<'_>) -> Parsed<'_, ()> {
         c.next().is_some_and(|c| c.is_ascii_digit())
             && !c.next().is_some_and(|c| c.is_ascii_digit())
     };
+    // a line end in wrapped prose is one blank, whatever is indented after it
+    if s[..s.len() - rest.as_str().len()].contains('\n') {
+        return Ok((rest, ()));
+    }
     if s.starts_with('\t') || blanks == 0 || blanks > 2 || (blanks == 2 && !one_digit()) {
         no(input)
     } else {

@@ -3,22 +3,53 @@
 use super::position::{Axis, Finder, Gathered};
 use super::run::Run;
 use super::scan::Kind;
+use super::text::Text;
 use super::words::Word;
-use crate::report::{Angle, AngleUnit, Compass, Mark, Position, PositionKind};
+use crate::report::{Angle, AngleUnit, Compass, Mark, Position, PositionKind, Sign};
 use crate::span::{Span, Spanned};
+use nom::Parser;
+use nom::branch::alt;
 
 impl Finder<'_, '_> {
     /// The next atom that holds a number, over what may stand between a label and its value.
     pub(super) fn to_number(&self, from: usize, g: &mut Gathered, lines: bool) -> Option<usize> {
         let mut line_ends = 0;
-        for i in from..self.atoms.len().min(from + 14) {
+        let mut i = from;
+        while i < self.atoms.len().min(from + 18) {
             let atom = &self.atoms[i];
+            if let Some((after, unit)) = self.form_bracket(i) {
+                g.unit = unit.or(g.unit);
+                i = after;
+                continue;
+            }
             match &atom.kind {
-                Kind::Angle(_) | Kind::Run(_) | Kind::Joined(_) => return Some(i),
+                Kind::Angle(_) | Kind::Run(_) | Kind::Joined(_) => {
+                    // "-.04": a number that begins with its point is not read
+                    let before = i.checked_sub(1).map(|k| &self.atoms[k]);
+                    if before.is_some_and(|a| {
+                        a.is_mark('.') && a.span.end == atom.span.start && i > from
+                    }) {
+                        let attached = i >= 2
+                            && self.atoms[i - 2].span.end == self.atoms[i - 1].span.start
+                            && matches!(self.atoms[i - 2].kind, Kind::Word(_));
+                        if !attached {
+                            return None;
+                        }
+                    }
+                    // a minus left at the end of the line before
+                    if i >= from + 2
+                        && matches!(self.atoms[i - 1].kind, Kind::LineEnd)
+                        && matches!(self.atoms[i - 2].kind, Kind::Mark(c) if super::number::is_dash(c))
+                    {
+                        g.minus = Some(Spanned::new(Sign::Minus, self.atoms[i - 2].span));
+                    }
+                    return Some(i);
+                }
                 Kind::Equinox(t) => g.tags.push(Spanned::new(*t, atom.span)),
                 Kind::Uncertainty(_) => {}
                 Kind::LineEnd if lines && line_ends == 0 => line_ends += 1,
-                Kind::Mark(c) if "=:,;/|()[]{}~.-–&≈<>*_`\"".contains(*c) => {}
+                Kind::Mark(c) if super::number::is_dash(*c) => {}
+                Kind::Mark(c) if "=:,;/|()[]{}~.-–&≈<>*_`$\\\"".contains(*c) => {}
                 Kind::Word(p) => {
                     if p.means(Word::Degrees) {
                         g.unit = Some(AngleUnit::Degrees);
@@ -47,6 +78,32 @@ impl Finder<'_, '_> {
                         g.unit = Some(AngleUnit::Hours);
                     } else {
                         return None;
+                    }
+                }
+                _ => return None,
+            }
+            i += 1;
+        }
+        None
+    }
+
+    /// `(h m s)`, `(hh:mm:ss)`, `(deg)`: how a number is written, in brackets after its label; the atom after it, and the unit it names.
+    fn form_bracket(&self, i: usize) -> Option<(usize, Option<AngleUnit>)> {
+        if !self.atoms[i].is_mark('(') && !self.atoms[i].is_mark('[') {
+            return None;
+        }
+        let mut unit = None;
+        for k in i + 1..self.atoms.len().min(i + 9) {
+            let atom = &self.atoms[k];
+            let words = atom.span.of(self.text);
+            match &atom.kind {
+                Kind::Mark(')' | ']') => return (k > i + 1).then_some((k + 1, unit)),
+                Kind::Mark('°') => unit = unit.or(Some(AngleUnit::Degrees)),
+                Kind::Word(p) if p.means(Word::Degrees) => unit = unit.or(Some(AngleUnit::Degrees)),
+                Kind::Word(p) if p.means(Word::Hours) => unit = unit.or(Some(AngleUnit::Hours)),
+                Kind::Mark(_) | Kind::Word(_) | Kind::Plain if words.len() <= 4 => {
+                    if matches!(words, "h" | "hh") {
+                        unit = unit.or(Some(AngleUnit::Hours));
                     }
                 }
                 _ => return None,
@@ -152,6 +209,113 @@ impl Finder<'_, '_> {
         }
     }
 
+    /// The number goes on after a mark that is none of an angle's (`-24*18'33\"`), or a sign stands where none is read (`(-)24`, `24-`):
+    /// what was read is not what was written.
+    pub(super) fn cut(&self, angle: &Angle) -> bool {
+        let after = self.text.get(angle.span.end..).unwrap_or("");
+        let mut next = after.chars();
+        let mark = next.next();
+        let strange = mark.is_some_and(|c| {
+            matches!(
+                c,
+                '*' | '^' | '\\' | '$' | '∘' | '~' | '_' | '#' | '@' | '%' | '&' | '<' | '¡' | '¢'
+            )
+        });
+        let digit_near = after
+            .chars()
+            .take(12)
+            .take_while(|c| !c.is_whitespace())
+            .any(|c| c.is_ascii_digit());
+        let trailing = mark.is_some_and(super::number::is_dash)
+            && angle.sign.is_none()
+            && next
+                .next()
+                .is_none_or(|c| c.is_whitespace() || matches!(c, ',' | ';' | ')'));
+        let before = self.text.get(..angle.span.start).unwrap_or("");
+        strange && digit_near || trailing || before.ends_with("(-)") || before.ends_with("(−)")
+    }
+
+    /// A number broken over a line: the declination ends its line with fewer parts than the right ascension, and the next line
+    /// begins with the digits that are missing. The whole angle, and the atom after it.
+    pub(super) fn rejoined(
+        &self,
+        angle: &Angle,
+        end: usize,
+        parts: usize,
+    ) -> Option<(Angle, usize)> {
+        let next = self.atoms.get(end + 1)?;
+        let broken =
+            angle.parts().len() < parts && matches!(self.atoms.get(end)?.kind, Kind::LineEnd);
+        let last = angle.parts().last()?;
+        if !broken
+            || last.number.places > 0
+            || !next
+                .span
+                .of(self.text)
+                .starts_with(|c: char| c.is_ascii_digit())
+        {
+            return None;
+        }
+        let line_end = self.atoms[end + 1..]
+            .iter()
+            .find(|a| matches!(a.kind, Kind::LineEnd))
+            .map_or(self.text.len(), |a| a.span.start);
+        let head = angle.span.of(self.text);
+        let joined = format!("{head} {}", self.text.get(next.span.start..line_end)?);
+        let (rest, whole) = alt((super::angle::angle, super::angle::angle_blanks))
+            .parse(Text::new(&joined))
+            .ok()?;
+        let cut = head.len() + 1;
+        if whole.parts().len() != parts
+            || rest.at() <= cut
+            || whole.parts()[angle.parts().len()].number.whole_digits != 2
+        {
+            return None;
+        }
+        let (start, shift) = (angle.span.start, next.span.start);
+        let whole = whole.moved(|o| if o < cut { start + o } else { shift + o - cut });
+        let after = self
+            .atoms
+            .iter()
+            .position(|a| a.span.start >= whole.span.end && a.span.start >= shift)?;
+        Some((whole, after))
+    }
+
+    /// A label of a declination with a number within a dozen atoms, on this line or the next.
+    pub(super) fn dec_label_near(&self, from: usize) -> bool {
+        let mut ends = 0;
+        for i in from..self.atoms.len().min(from + 14) {
+            if matches!(self.atoms[i].kind, Kind::LineEnd) {
+                ends += 1;
+            }
+            match self.axis(i) {
+                Some(Axis::Dec | Axis::PolarDistance) => {
+                    return self
+                        .to_number(i + 1, &mut Gathered::default(), true)
+                        .is_some();
+                }
+                Some(Axis::Ra) => return false,
+                _ => {}
+            }
+            if ends > 1 {
+                return false;
+            }
+        }
+        false
+    }
+
+    /// A label of a declination not far ahead, with no other right ascension before it.
+    pub(super) fn dec_label_ahead(&self, from: usize) -> bool {
+        for i in from..self.atoms.len().min(from + 40) {
+            match self.axis(i) {
+                Some(Axis::Dec | Axis::PolarDistance) => return true,
+                Some(Axis::Ra) => return false,
+                _ => {}
+            }
+        }
+        false
+    }
+
     /// Hours or degrees, by its own marks, its notation, or a word beside it.
     pub(super) fn unit_of(&self, ra: &Angle, said: Option<AngleUnit>) -> Option<AngleUnit> {
         if let Some(u) = ra.marked_unit() {
@@ -224,11 +388,15 @@ impl Finder<'_, '_> {
             || (degrees(ra, unit) - degrees(other, self.unit_of(other, None))).abs() < 1.0
     }
 
-    pub(super) fn compass_atom(&self, i: usize, dec: &Angle) -> Option<Spanned<Compass>> {
+    pub(super) fn compass_atom(&self, i: usize, dec: &Angle) -> Option<(Spanned<Compass>, usize)> {
         if dec.compass.is_some() || dec.sign.is_some() {
             return None;
         }
-        let atom = self.atoms.get(i)?;
+        // "S", "south", "(south)", ", south"
+        let bracket = self.atoms.get(i)?.is_mark('(');
+        let comma = self.atoms[i].is_mark(',');
+        let k = i + usize::from(bracket || comma);
+        let atom = self.atoms.get(k)?;
         let Kind::Word(p) = &atom.kind else {
             return None;
         };
@@ -238,7 +406,12 @@ impl Finder<'_, '_> {
         })?;
         let words = atom.span.of(self.text);
         let single = words.chars().filter(|c| c.is_alphabetic()).count() == 1;
-        (!single || words.starts_with(char::is_uppercase)).then_some(Spanned::new(point, atom.span))
+        if single && (comma || words.starts_with(char::is_lowercase))
+            || bracket && !self.atoms.get(k + 1)?.is_mark(')')
+        {
+            return None;
+        }
+        Some((Spanned::new(point, atom.span), k + 1 + usize::from(bracket)))
     }
 
     /// `12.5 arcsec`, `-33.1 mas/yr`, `6".4`: too small a unit for a coordinate.
@@ -293,7 +466,7 @@ pub(super) fn position(
 }
 
 /// The last numbers of a run that stands before a signed declination: a serial number or a day may lead it.
-pub(super) fn ra_before(run: &Run, dec_parts: Option<usize>) -> Option<Angle> {
+pub(super) fn ra_before(run: &Run, dec_parts: Option<usize>, named: bool) -> Option<Angle> {
     let n = run.numbers.len();
     let hour_ok = |i: usize| {
         run.numbers
@@ -303,7 +476,11 @@ pub(super) fn ra_before(run: &Run, dec_parts: Option<usize>) -> Option<Angle> {
     let from = match n {
         0 => return None,
         1..=2 => 0,
-        3 => usize::from(dec_parts == Some(2) && !hour_ok(0) && hour_ok(1)),
+        // "Suspect 5 18 12.2 -12 04": the number of a name, then hours and minutes
+        3 => {
+            let name_number = named && run.numbers[2].0.places > 0;
+            usize::from(dec_parts == Some(2) && hour_ok(1) && (!hour_ok(0) || name_number))
+        }
         _ => n - 3,
     };
     run.angle(from, n)

@@ -7,7 +7,7 @@ use super::pieces::{in_range, plausible, position, ra_before, same_shape, sexage
 use super::run::Run;
 use super::scan::{Atom, Kind};
 use super::words::Word;
-use crate::report::{Angle, AngleUnit, Compass, Mark, Position, PositionKind};
+use crate::report::{Angle, AngleUnit, Compass, Mark, Position, PositionKind, Sign};
 use crate::span::Spanned;
 
 /// A position found in a block, with what stands on it.
@@ -43,11 +43,17 @@ pub(super) enum Axis {
 pub(super) struct Gathered {
     pub tags: Vec<Spanned<Tagged>>,
     pub unit: Option<AngleUnit>,
+    /// A minus left at the end of a line, before its number.
+    pub minus: Option<Spanned<Sign>>,
 }
 
 /// All positions of a block's atoms.
 pub fn positions(text: &str, atoms: &[Atom]) -> Vec<Found> {
-    let finder = Finder { text, atoms };
+    let mut finder = Finder {
+        text,
+        atoms,
+        last: None,
+    };
     let mut found: Vec<Found> = Vec::new();
     let mut i = 0;
     while i < atoms.len() {
@@ -56,6 +62,7 @@ pub fn positions(text: &str, atoms: &[Atom]) -> Vec<Found> {
             Some(mut f) => {
                 finder.tags_around(&mut f, from);
                 i = f.end.max(i + 1);
+                finder.last = Some(f.position.clone());
                 found.push(f);
             }
             None => i += 1,
@@ -67,6 +74,8 @@ pub fn positions(text: &str, atoms: &[Atom]) -> Vec<Found> {
 pub(super) struct Finder<'a, 't> {
     pub text: &'t str,
     pub atoms: &'a [Atom<'t>],
+    /// The position found last.
+    pub last: Option<Position>,
 }
 
 impl<'t> Finder<'_, 't> {
@@ -88,7 +97,7 @@ impl<'t> Finder<'_, 't> {
             Axis::Azimuth
         } else if is(Word::ZenithDistance) {
             Axis::ZenithDistance
-        } else if is(Word::Altitude) {
+        } else if is(Word::Altitude) || is(Word::Elevation) {
             Axis::Altitude
         } else {
             return None;
@@ -154,12 +163,18 @@ impl<'t> Finder<'_, 't> {
             .of(self.text)
             .eq_ignore_ascii_case("alpha");
         // one run may hold both: "RA 13 08 52 22 14 39" is unlabelled in the middle
-        let (ra, used) = self.angle_at(at, Axis::Ra, None)?;
+        let (mut ra, mut used) = self.angle_at(at, Axis::Ra, None)?;
+        if let Some((whole, after)) = self
+            .rejoined(&ra, used, 3)
+            .or_else(|| self.rejoined(&ra, used, 2))
+        {
+            (ra, used) = (whole, after);
+        }
         let unit = self.unit_of(&ra, g.unit.or_else(|| self.unit_after(used)));
         next = used;
         let mut other_ra: Option<(Angle, Option<AngleUnit>)> = None;
-        let mut bracket = false;
         // on the way to the declination: tags, uncertainties, another form of the RA
+        let mut forms_passed = 0;
         let dec = loop {
             let Some(atom) = self.atoms.get(next) else {
                 break None;
@@ -176,7 +191,7 @@ impl<'t> Finder<'_, 't> {
                 | Kind::Mark(
                     ',' | ';' | '/' | '|' | '&' | ':' | ')' | ']' | '}' | '~' | '·' | '-' | '–',
                 ) => {}
-                Kind::Mark('(' | '[' | '{') => bracket = true,
+                Kind::Mark('(' | '[' | '{') => {}
                 Kind::Mark('=' | '≈') => {}
                 Kind::Word(_)
                     if self
@@ -188,9 +203,12 @@ impl<'t> Finder<'_, 't> {
                     let Some(at) = self.to_number(next + 1, &mut h, true) else {
                         break None;
                     };
-                    let Some((dec, used)) = self.angle_at(at, Axis::Dec, Some(&ra)) else {
+                    let Some((mut dec, used)) = self.angle_at(at, Axis::Dec, Some(&ra)) else {
                         break None;
                     };
+                    if dec.sign.is_none() {
+                        dec.sign = h.minus;
+                    }
                     g.tags.append(&mut h.tags);
                     break Some((dec, used, which == Axis::PolarDistance));
                 }
@@ -210,7 +228,31 @@ impl<'t> Finder<'_, 't> {
                 Kind::Angle(_) | Kind::Run(_) | Kind::Joined(_) => {
                     // directly after the RA: the declination, or the RA once more in another form
                     let (candidate, after) = self.angle_at(next, Axis::Dec, Some(&ra))?;
-                    let again = self.between_is(used, next, &['=', '('])
+                    // with the declination's own label ahead: an error of the right ascension, or another form of it
+                    let ahead = self.dec_label_near(after);
+                    if ahead && !self.same_kind_of_ra(&ra, unit, &candidate) {
+                        forms_passed += 1;
+                        next = after;
+                        continue;
+                    }
+                    // hours are no declination: another form, or the RA of another equinox; its declination has a label of its own
+                    let again_on_lines = candidate.sign.is_none()
+                        && self.atoms[used..next]
+                            .iter()
+                            .any(|a| matches!(a.kind, Kind::LineEnd))
+                        && self.dec_label_ahead(after);
+                    if candidate.marked_unit() == Some(AngleUnit::Hours)
+                        && self.dec_label_ahead(after)
+                        || again_on_lines
+                    {
+                        forms_passed += 1;
+                        next = after;
+                        continue;
+                    }
+                    if candidate.marked_unit() == Some(AngleUnit::Hours) {
+                        break None;
+                    }
+                    let again = self.between_is(used, next, &['=', '(', '[', '{'])
                         && self.same_kind_of_ra(&ra, unit, &candidate);
                     if again
                         && other_ra.is_none()
@@ -244,11 +286,10 @@ impl<'t> Finder<'_, 't> {
                 .iter()
                 .filter(|a| matches!(a.kind, Kind::LineEnd))
                 .count();
-            if lines > 2 || next > used + 14 {
+            if lines > 2 + forms_passed || next > used + 14 + 12 * forms_passed {
                 break None;
             }
         };
-        let _ = bracket;
         let kind = if axis == Axis::HourAngle {
             PositionKind::HourAngle
         } else {
@@ -257,10 +298,13 @@ impl<'t> Finder<'_, 't> {
         let sexagesimal_ra = ra.parts().len() > 1 || ra.marked_unit() == Some(AngleUnit::Hours);
         match dec {
             Some((mut dec, mut end, polar_distance)) => {
-                if let Some(c) = self.compass_atom(end, &dec) {
+                if let Some((whole, after)) = self.rejoined(&dec, end, ra.parts().len()) {
+                    (dec, end) = (whole, after);
+                }
+                if let Some((c, after)) = self.compass_atom(end, &dec) {
                     dec.compass = Some(c);
                     dec.span.end = c.span.end;
-                    end += 1;
+                    end = after;
                 }
                 let mut other_forms = Vec::new();
                 if let Some((again, again_unit)) = other_ra {
@@ -271,7 +315,8 @@ impl<'t> Finder<'_, 't> {
                         end = after;
                     }
                 }
-                let mut p = position(kind, Some(ra), Some(dec), unit);
+                let whole = !self.cut(&dec);
+                let mut p = position(kind, Some(ra), whole.then_some(dec), unit);
                 p.polar_distance = polar_distance;
                 p.labelled = true;
                 if self.blocked(i) && !(sexagesimal(&p) || !g.tags.is_empty())
@@ -394,6 +439,30 @@ impl<'t> Finder<'_, 't> {
         let Some((which, two, end)) = other else {
             return None;
         };
+        let (mut one, mut two, mut end) = (one, two, end);
+        let mut from_south = false;
+        // "S 35° W": counted from the south through west; other quarters are not settled here
+        let azimuth_here = if axis == Axis::Azimuth {
+            &mut one
+        } else {
+            &mut two
+        };
+        if let Some(point) = azimuth_here.compass {
+            let after = self.atoms.get(end).and_then(|a| match &a.kind {
+                Kind::Word(p) => p.meanings().find_map(|w| match w {
+                    Word::Compass(c) => Some(c),
+                    _ => None,
+                }),
+                _ => None,
+            });
+            match (point.value, after) {
+                (Compass::South, Some(Compass::West)) => from_south = true,
+                (Compass::North, Some(Compass::East)) => {}
+                _ => return None,
+            }
+            azimuth_here.compass = None;
+            end += 1;
+        }
         let (azimuth, altitude, zenith) = if axis == Axis::Azimuth {
             (one, two, which == Axis::ZenithDistance)
         } else {
@@ -406,6 +475,7 @@ impl<'t> Finder<'_, 't> {
             Some(AngleUnit::Degrees),
         );
         p.zenith_distance = zenith;
+        p.azimuth_from_south = from_south;
         p.labelled = true;
         let mut last = end;
         for (k, atom) in self.atoms.iter().enumerate().skip(end).take(6) {
@@ -442,7 +512,8 @@ impl<'t> Finder<'_, 't> {
             return None;
         }
         let mut g = Gathered::default();
-        let found = self.pair(i, &mut g, false, None)?;
+        let over_lines = self.word_before(i);
+        let found = self.pair(i, &mut g, over_lines, None)?;
         let p = &found.position;
         let (ra, dec) = (p.first?, p.second?);
         let tag = !found.tags.is_empty()
@@ -452,7 +523,9 @@ impl<'t> Finder<'_, 't> {
         let dec_marked = dec.marked_unit() == Some(AngleUnit::Degrees)
             || dec.sign.is_some()
             || dec.compass.is_some();
-        if self.blocked(i) && !tag {
+        if self.blocked(i) && !tag
+            || self.other_coordinates(i) && ra.marked_unit() != Some(AngleUnit::Hours)
+        {
             return None;
         }
         if ra.sign.is_some()
@@ -465,29 +538,49 @@ impl<'t> Finder<'_, 't> {
         }
         let padded = |a: &Angle| a.parts().iter().all(|p| p.number.whole_digits == 2);
         let colons = |a: &Angle| a.parts()[0].mark == Mark::Colon;
-        let strong = marked_ra && (dec_marked || dec.parts().len() > 1)
-            || colons(&ra) && ra.parts().len() == 3 && dec.sign.is_some() && dec.parts().len() > 1
-            || ra.parts().len() == 3
-                && padded(&ra)
-                && dec.sign.is_some()
-                && dec.parts().len() > 1
-                && padded(&dec)
-                && in_range(&ra, &dec);
-        let named = self.word_before(i)
-            || self.named_line(i)
-                && ra.parts().len() > 1
-                && padded(&ra)
-                && (dec.sign.is_some() || dec.compass.is_some());
+        // a lone number is a right ascension only where a word or a tag says so
+        let lone =
+            ra.parts().len() == 1 && ra.parts()[0].number.places == 0 && ra.marked_unit().is_none();
+        if lone && !self.word_before(i)
+            || ra.parts().len() > 1 && !dec_marked && dec.parts().len() == 1
+        {
+            return None;
+        }
+        // "12 13 -4 05 7 …": what follows the declination with a sign is the declination
+        if !dec_marked && self.signed_after(found.end) {
+            return None;
+        }
+        let led = self.word_before(i);
+        let row = self.named_line(i, from) && self.short_tail(found.end);
+        let strong = marked_ra && (dec.parts().len() > 1 && dec_marked || row && dec_marked || led)
+            || (led || row)
+                && (marked_ra && dec.parts().len() > 1
+                    || colons(&ra)
+                        && ra.parts().len() == 3
+                        && dec.sign.is_some()
+                        && dec.parts().len() > 1
+                    || ra.parts().len() == 3
+                        && padded(&ra)
+                        && dec.sign.is_some()
+                        && dec.parts().len() > 1
+                        && padded(&dec)
+                        && in_range(&ra, &dec));
+        let both_degrees = ra.marked_unit() == Some(AngleUnit::Degrees)
+            && dec.marked_unit() == Some(AngleUnit::Degrees)
+            && dec.sign.is_some();
+        let named = led
+            || row
+                && (ra.parts().len() > 1 && padded(&ra) || both_degrees)
+                && (dec.sign.is_some() || dec.compass.is_some())
+                && (dec.parts().len() > 1 || dec.marked_unit().is_some());
         let pairs_well =
             ra.parts().len() > 1 && dec.parts().len() > 1 || dec.sign.is_some() || dec_marked;
-        if strong
+        let form = self.form_led(i, from)
+            && (self.says_form(i, from) || self.close_to_last(&found.position));
+        let taken = strong
             || tag && (pairs_well || ra.marked_unit().is_some())
-            || (named || self.form_led(i, from)) && pairs_well && in_range(&ra, &dec)
-        {
-            Some(found)
-        } else {
-            None
-        }
+            || (named || form) && pairs_well && in_range(&ra, &dec);
+        taken.then_some(found)
     }
 
     /// An RA at atom `i` and a declination right after it.
@@ -522,7 +615,7 @@ impl<'t> Finder<'_, 't> {
             _ => None,
         };
         let (ra, _) = match &self.atoms[i].kind {
-            Kind::Run(run) => (ra_before(run, dec_run)?, i + 1),
+            Kind::Run(run) => (ra_before(run, dec_run, self.name_right_before(i))?, i + 1),
             _ => self.angle_at(i, Axis::Ra, None)?,
         };
         let mut h = Gathered::default();
@@ -531,10 +624,13 @@ impl<'t> Finder<'_, 't> {
         if dec.marked_unit() == Some(AngleUnit::Hours) {
             return None;
         }
-        if let Some(c) = self.compass_atom(end, &dec) {
+        if let Some((whole, after)) = self.rejoined(&dec, end, ra.parts().len()) {
+            (dec, end) = (whole, after);
+        }
+        if let Some((c, after)) = self.compass_atom(end, &dec) {
             dec.compass = Some(c);
             dec.span.end = c.span.end;
-            end += 1;
+            end = after;
         }
         g.tags.append(&mut h.tags);
         let unit = self.unit_of(
@@ -543,6 +639,9 @@ impl<'t> Finder<'_, 't> {
                 .or_else(|| if labelled { self.unit_after(end) } else { None }),
         );
         let p = position(PositionKind::Equatorial, Some(ra), Some(dec), unit);
+        if self.cut(&dec) && !labelled {
+            return None;
+        }
         let mut tags = std::mem::take(&mut g.tags);
         tags.extend(self.tag_in_run(next_dec, &dec));
         if self.small_unit_after(end, &dec) {

@@ -2,17 +2,18 @@
 
 use super::angle::{angle, angle_blanks, angle_joined};
 use super::equinox::{Tagged, equinox_tag, equinox_year};
+use super::head::{Column, ColumnHead, Head};
 use super::instant::{clock, instant, zone};
 use super::position::{Found, positions};
 use super::scan::{Atom, Kind, atoms};
 use super::site::{elevation, site_coordinates};
 use super::statements::{Statements, gather};
-use super::table::{Column, ColumnHead, Head, Layout, by_column, cells};
+use super::table::{Layout, by_column, cells};
 use super::text::Text;
 use super::words::{Word, word};
 use crate::report::{
-    Angle, AngleUnit, Clock, DateWritten, HorizonQuantity, InstantWritten, Position, PositionKind,
-    SiteWritten, StatedHorizon, Zone,
+    Angle, AngleUnit, Clock, Compass, DateWritten, HorizonQuantity, InstantWritten, Mark, Number,
+    Part, Position, PositionKind, Sign, SiteWritten, StatedHorizon, Zone,
 };
 use crate::sheet::Sheet;
 use crate::span::{Span, Spanned};
@@ -30,6 +31,8 @@ pub struct Row {
     pub found: Found,
     /// What else it says.
     pub said: Statements,
+    /// A day alone, whose month and year stand in a row above.
+    pub day_only: Option<(Number, Span)>,
 }
 
 /// The reports of one line read by a head: one for each object that the line names; none where it is no row.
@@ -84,11 +87,20 @@ struct Cells {
     site: SiteWritten,
     tags: Vec<Spanned<Tagged>>,
     said: Statements,
+    /// Coordinates in columns of their own for degrees, minutes and seconds: of RA, Dec, latitude, longitude.
+    split: [Vec<(char, Number, Option<Sign>, Span)>; 4],
+    sign: Option<Spanned<Sign>>,
+    /// The column before.
+    after: Option<Column>,
+    /// A cell for the time holds something else.
+    unread_time: bool,
+    day_only: Option<(Number, Span)>,
     /// A coordinate's cell that holds something else than a coordinate.
     unread: Option<Span>,
 }
 
-fn part(
+/// One object's cells, each with the head of its column, as a row.
+pub(super) fn part(
     text: &str,
     head: &Head,
     line: usize,
@@ -98,17 +110,22 @@ fn part(
     let mut c = Cells::default();
     for &(column, cell) in pairs {
         let words = cell.of(text);
-        if !(words.is_empty() || matches!(words, "-" | "--" | "—" | "–" | "…" | "...")) {
+        let sign = column.column == Column::Sign;
+        if sign || !(words.is_empty() || matches!(words, "-" | "--" | "—" | "–" | "…" | "..."))
+        {
             c.cell(text, head, line, column, cell);
         }
     }
+    c.put_together();
     let found = c.position(head)?;
     let span = Span::new(body.start, body.end);
+    let day_only = c.day_only;
     Some(Row {
         line,
         span,
         said: c.finish(text, line, body),
         found,
+        day_only,
     })
 }
 
@@ -116,13 +133,51 @@ impl Cells {
     fn cell(&mut self, text: &str, head: &Head, line: usize, column: ColumnHead, cell: Span) {
         let words = cell.of(text);
         let input = Text::window(text, cell);
+        if column.column != Column::Sign {
+            self.after = Some(column.column);
+        }
+        if let Some(part) = column.part {
+            self.split_cell(input, column.column, part);
+            return;
+        }
         match column.column {
+            Column::Sign => {
+                let point = match words {
+                    "N" | "n" => Some(Compass::North),
+                    "S" | "s" => Some(Compass::South),
+                    "E" | "e" => Some(Compass::East),
+                    "W" | "w" => Some(Compass::West),
+                    _ => None,
+                };
+                // beside a latitude or longitude it is theirs
+                let of_site = match self.after {
+                    Some(Column::Latitude) => self.site.latitude.as_mut(),
+                    Some(Column::Longitude) => self.site.longitude.as_mut(),
+                    _ => None,
+                };
+                if let (Some(point), Some(angle)) = (point, of_site) {
+                    angle.compass = Some(Spanned::new(point, cell));
+                    return;
+                }
+                let sign = match words {
+                    "-" | "−" | "–" | "S" | "s" => Some(Sign::Minus),
+                    "+" | "N" | "n" => Some(Sign::Plus),
+                    _ => None,
+                };
+                self.sign = sign.map(|s| Spanned::new(s, cell));
+            }
+            Column::Geographic => {
+                if let Some((latitude, longitude)) = pair(input) {
+                    self.site.latitude = Some(latitude);
+                    self.site.longitude = Some(longitude);
+                }
+            }
             Column::Ra => match coordinate(input, true) {
                 Some(a) => self.ra.push((a, column)),
                 None => self.unread = Some(cell),
             },
             Column::Dec => match coordinate(input, true) {
-                Some(a) => self.dec.push((a, column)),
+                Some(a) => self.dec.push((toward(a, column), column)),
                 None => self.unread = Some(cell),
             },
             Column::HourAngle => self.hour_angle = coordinate(input, true),
@@ -151,6 +206,15 @@ impl Cells {
                 if let Ok((rest, number)) = super::number::number(input)
                     && rest.is_empty()
                 {
+                    let number = match column.base {
+                        Some(base) => Number {
+                            mantissa: number.mantissa
+                                + base.mantissa * 10u64.pow(u32::from(number.places)),
+                            whole_digits: 7,
+                            ..number
+                        },
+                        None => number,
+                    };
                     let d = Spanned::new(DateWritten::Julian { number, count }, cell);
                     let i = InstantWritten {
                         date: Some(d),
@@ -175,8 +239,12 @@ impl Cells {
                 }
             }
             Column::Site => self.site_cell(text, input, line, cell),
-            Column::Latitude => self.site.latitude = coordinate(input, false),
-            Column::Longitude => self.site.longitude = coordinate(input, false),
+            Column::Latitude => {
+                self.site.latitude = coordinate(input, false).map(|a| toward(a, column))
+            }
+            Column::Longitude => {
+                self.site.longitude = coordinate(input, false).map(|a| toward(a, column))
+            }
             Column::Elevation => self.site.elevation_m = height(input, head.feet),
             Column::Magnitude => {
                 self.said.magnitude = super::number::number(input)
@@ -191,6 +259,16 @@ impl Cells {
                 .map(|(_, c)| Spanned::new(c, cell));
             }
             Column::Uncertainty | Column::Note => {
+                // a column of instants whose head says nothing
+                if self.date.is_none()
+                    && let Ok((rest, i)) = instant(input)
+                    && rest.skip_blanks().is_empty()
+                    && i.date.is_some()
+                    && i.clock.is_some()
+                {
+                    self.date = Some(i);
+                    return;
+                }
                 let note = gather(text, &inside(input, line), &[]);
                 self.said.stets.extend(note.stets);
                 self.said.roles.extend(note.roles);
@@ -212,12 +290,33 @@ impl Cells {
             }
         } else if let Ok((rest, c)) = clock(input) {
             self.time = Some((c, zone(rest).ok().map(|(_, z)| z)));
+        } else if let Some(c) = bare_clock(input) {
+            self.time = Some((c, None));
+        } else if let Ok((rest, day)) = super::number::number(input)
+            && rest.is_empty()
+            && day.whole_digits <= 2
+            && (1.0..32.0).contains(&day.value())
+        {
+            self.day_only = Some((day, input.span()));
+        } else {
+            // a time that cannot be read must not become midnight
+            self.unread_time = true;
         }
     }
 
     fn site_cell(&mut self, text: &str, input: Text<'_>, line: usize, cell: Span) {
         if let Ok((_, s)) = site_coordinates(input) {
             self.said.sites.push(s);
+            return;
+        }
+        if let Some((latitude, longitude)) = pair(input) {
+            self.said.sites.push(SiteWritten {
+                latitude: Some(latitude),
+                longitude: Some(longitude),
+                signed_field: true,
+                span: cell,
+                ..SiteWritten::default()
+            });
             return;
         }
         let named = |span: Span| {
@@ -245,6 +344,78 @@ impl Cells {
                 ..SiteWritten::default()
             },
         });
+    }
+
+    /// A cell of a coordinate that is spread over several columns.
+    fn split_cell(&mut self, input: Text<'_>, axis: Column, part: char) {
+        let slot = match axis {
+            Column::Ra => 0,
+            Column::Dec => 1,
+            Column::Latitude => 2,
+            _ => 3,
+        };
+        let (rest, sign) = match super::number::sign(input) {
+            Ok((rest, s)) => (rest, Some(s.value)),
+            Err(_) => (input, None),
+        };
+        match super::number::number(rest) {
+            Ok((after, n)) if after.skip_blanks().is_empty() => {
+                self.split[slot].push((part, n, sign, input.span()))
+            }
+            _ => self.unread = Some(input.span()),
+        }
+    }
+
+    /// Coordinates from their columns, signs from theirs.
+    fn put_together(&mut self) {
+        for slot in 0..4 {
+            let pieces = std::mem::take(&mut self.split[slot]);
+            let whole = pieces.first().is_some_and(|p| matches!(p.0, 'h' | 'd'));
+            let span = pieces.iter().map(|p| p.3).reduce(Span::cover);
+            let (true, Some(span)) = (whole, span) else {
+                continue;
+            };
+            let parts: Vec<Part> = pieces
+                .iter()
+                .map(|p| Part {
+                    number: p.1,
+                    mark: Mark::Blank,
+                    span: p.3,
+                })
+                .collect();
+            let sign = pieces[0]
+                .2
+                .map(|s| Spanned::new(s, Span::new(pieces[0].3.start, pieces[0].3.start + 1)));
+            let Some(a) = Angle::new(sign, &parts, None, span) else {
+                continue;
+            };
+            let unit = if pieces[0].0 == 'h' {
+                AngleUnit::Hours
+            } else {
+                AngleUnit::Degrees
+            };
+            let column = ColumnHead {
+                column: Column::Ra,
+                span,
+                tag: None,
+                unit: Some(unit),
+                part: None,
+                compass: None,
+                base: None,
+            };
+            match slot {
+                0 => self.ra.push((a, column)),
+                1 => self.dec.push((a, column)),
+                2 => self.site.latitude = Some(a),
+                _ => self.site.longitude = Some(a),
+            }
+        }
+        if let (Some(sign), Some((dec, _))) = (self.sign, self.dec.first_mut())
+            && dec.sign.is_none()
+        {
+            dec.sign = Some(sign);
+            dec.span = dec.span.cover(sign.span);
+        }
     }
 
     /// The position of the row: the first pair of its columns; further pairs are other forms of it.
@@ -326,6 +497,9 @@ impl Cells {
             }
         }
         let mut said = self.said;
+        if self.unread_time && self.date.as_ref().is_some_and(|d| d.clock.is_none()) {
+            self.date = None;
+        }
         if let Some(d) = self.date {
             said.instants.insert(0, d);
         }
@@ -391,6 +565,14 @@ fn found(
     let first_unit = match (kind, first) {
         (PositionKind::HourAngle, _) => Some(AngleUnit::Hours),
         (PositionKind::Horizontal, _) => Some(AngleUnit::Degrees),
+        // hours, minutes and seconds under a head of degrees: nothing settles which
+        (_, Some(a))
+            if a.parts().len() > 1
+                && a.marked_unit().is_none()
+                && said == Some(AngleUnit::Degrees) =>
+        {
+            (a.value() >= 24.0).then_some(AngleUnit::Degrees)
+        }
         (_, Some(a)) => a.marked_unit().or(said).or(if a.parts().len() > 1 {
             Some(AngleUnit::Hours)
         } else {
@@ -475,4 +657,63 @@ fn forced_pair(inner: &[Atom], column: ColumnHead) -> Option<Found> {
         Some(dec),
         column.unit,
     ))
+}
+
+/// A coordinate with the hemisphere that its head names.
+fn toward(mut a: Angle, column: ColumnHead) -> Angle {
+    if a.sign.is_none() && a.compass.is_none() {
+        a.compass = column.compass.map(|c| Spanned::new(c, a.span));
+    }
+    a
+}
+
+/// `-33.87, 151.21`: latitude and longitude of a field.
+fn pair(input: Text<'_>) -> Option<(Angle, Angle)> {
+    let (rest, latitude) = alt((angle, angle_blanks)).parse(input).ok()?;
+    let rest = rest.skip_blanks();
+    let rest = if matches!(rest.peek(), Some(',' | ';' | '/')) {
+        rest.skip(1).skip_blanks()
+    } else {
+        rest
+    };
+    let (rest, longitude) = alt((angle, angle_blanks)).parse(rest).ok()?;
+    let fits = rest.skip_blanks().is_empty()
+        && latitude.value().abs() <= 90.0
+        && longitude.value().abs() <= 360.0;
+    let one = latitude.parts().len() == 1 && longitude.parts().len() == 1
+        || latitude.marked_unit().is_some();
+    (fits && one).then_some((latitude, longitude))
+}
+
+/// A clock time in a column for it, without colons: `22 31 05`, `2231`, `223105`.
+fn bare_clock(input: Text<'_>) -> Option<Clock> {
+    let words = input.as_str().trim();
+    let fields: Vec<&str> = if words.contains(' ') {
+        words.split_whitespace().collect()
+    } else {
+        match words.len() {
+            4 => vec![&words[..2], &words[2..]],
+            6 => vec![&words[..2], &words[2..4], &words[4..]],
+            _ => return None,
+        }
+    };
+    let fields: Option<Vec<Number>> = fields
+        .iter()
+        .map(|f| {
+            super::number::number(Text::new(f))
+                .ok()
+                .filter(|(r, n)| r.is_empty() && n.whole_digits <= 2)
+                .map(|(_, n)| n)
+        })
+        .collect();
+    let fields = fields?;
+    let in_range =
+        (2..=3).contains(&fields.len()) && fields[0].mantissa < 24 && fields[1].mantissa < 60;
+    in_range.then(|| Clock {
+        hour: fields[0],
+        minute: Some(fields[1]),
+        second: fields.get(2).copied(),
+        pm: None,
+        span: input.span(),
+    })
 }

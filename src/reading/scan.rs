@@ -74,7 +74,25 @@ pub fn atoms<'a>(line: Text<'a>, number: usize, awaiting: &mut bool, out: &mut V
     loop {
         rest = rest.skip_blanks();
         let Some(c) = rest.peek() else { break };
-        let (next, kind) = atom(rest, c, after_label, *awaiting);
+        // a dash between blanks is a sign only after a number or a label; else it parts, or opens an item
+        let parting = super::number::is_dash(c)
+            && rest.skip(c.len_utf8()).peek().is_none_or(is_blank)
+            && !out.last().is_some_and(|a: &Atom| {
+                a.line == number
+                    && (matches!(
+                        a.kind,
+                        Kind::Run(_)
+                            | Kind::Angle(_)
+                            | Kind::Joined(_)
+                            | Kind::Mark('=' | ':' | ',' | '/' | '|' | ')')
+                    ) || a.means(Word::Declination)
+                        || a.means(Word::Both))
+            });
+        let (next, kind) = if parting {
+            (rest.skip(c.len_utf8()), Kind::Mark(c))
+        } else {
+            atom(rest, c, after_label, *awaiting)
+        };
         let next = if next.at() <= rest.at() {
             rest.skip(c.len_utf8())
         } else {
@@ -84,7 +102,7 @@ pub fn atoms<'a>(line: Text<'a>, number: usize, awaiting: &mut bool, out: &mut V
             Kind::Word(p) => [Word::RightAscension, Word::Declination, Word::Both]
                 .iter()
                 .any(|w| p.means(*w)),
-            Kind::Mark('(' | '[' | '=' | ':') => after_label,
+            Kind::Mark('(' | '[' | '=' | ':' | '_') => after_label,
             _ => false,
         };
         if let Kind::Word(p) = &kind {
@@ -163,6 +181,8 @@ fn atom<'a>(rest: Text<'a>, c: char, after_label: bool, awaiting: bool) -> (Text
         && let Ok((r, i)) = instant(rest)
         // "RA 9.5958 Dec +33": no ninth of December
         && !(awaiting && yearless(&i))
+        // "RA/Dec: 08:18.5 +07:30": no clock with its offset
+        && !(after_label && i.date.is_none())
     {
         return (r, Kind::Instant(Box::new(i)));
     }
@@ -203,7 +223,21 @@ fn atom<'a>(rest: Text<'a>, c: char, after_label: bool, awaiting: bool) -> (Text
     if (numeric || signed)
         && let Ok((r, found)) = run(rest)
     {
-        // a misspelt tag such as 200O stays out of runs
+        // a date that follows ends the run: "KT 9 2013 Apr 13"
+        let mut found = found;
+        let line_end = rest.span().end;
+        let date = (1..found.numbers.len()).find(|&k| {
+            let (n, span) = found.numbers[k];
+            n.whole_digits == 4
+                && n.places == 0
+                && dated(rest.skip(span.start - rest.at()))
+                && span.start < line_end
+        });
+        if let Some(k) = date {
+            found.numbers.truncate(k);
+            found.span.end = found.numbers[k - 1].1.end;
+            return (rest.skip(found.span.end - rest.at()), Kind::Run(found));
+        }
         return (r, Kind::Run(found));
     }
     if c == 'J' || c == 'B' || c == 'j' || numeric {
@@ -289,6 +323,11 @@ fn plain(rest: Text<'_>) -> (Text<'_>, Kind<'_>) {
         rest.skip(end.max(s.chars().next().map_or(1, char::len_utf8))),
         Kind::Plain,
     )
+}
+
+/// A full date begins here.
+fn dated(input: Text<'_>) -> bool {
+    instant(input).is_ok_and(|(_, i)| i.date.is_some())
 }
 
 /// A date that leaves out its year and has no clock time.

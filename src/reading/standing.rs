@@ -145,6 +145,11 @@ impl Reader<'_> {
             .first()
             .cloned()
             .or_else(|| self.standing.observer.clone());
+        let mentions = if site.is_none() {
+            mentions(self.text, part)
+        } else {
+            Vec::new()
+        };
         if equinoxes.is_empty() {
             self.untagged.push(self.reports.len());
         }
@@ -168,6 +173,7 @@ impl Reader<'_> {
             epoch_of_place,
             instants,
             site,
+            mentions,
             stated_horizon: said.horizon,
             stated_other: said.other,
             constellation: said.constellation,
@@ -284,4 +290,36 @@ impl Reader<'_> {
             *year_digits = digits;
         }
     }
+}
+
+/// Runs of up to three capitalised words: "Skarn Head", "Colle Ventoso".
+fn mentions(text: &str, part: Span) -> Vec<Spanned<String>> {
+    let mut found: Vec<Span> = Vec::new();
+    let mut run: Vec<Span> = Vec::new();
+    let mut at = part.start;
+    for piece in part
+        .of(text)
+        .split_inclusive(|c: char| !(c.is_alphabetic() || c == '-' || c == '\''))
+    {
+        let word = piece.trim_end_matches(|c: char| !c.is_alphabetic());
+        let span = Span::new(at, at + word.len());
+        at += piece.len();
+        if word.chars().count() > 2 && word.starts_with(char::is_uppercase) {
+            run.push(span);
+            for k in run.len().saturating_sub(3)..run.len() {
+                found.push(run[k].cover(span));
+            }
+        }
+        // anything but one blank after it ends the run
+        if word.is_empty() || !piece.ends_with(' ') || !word.starts_with(char::is_uppercase) {
+            run.clear();
+        }
+        if found.len() > 60 {
+            break;
+        }
+    }
+    found
+        .into_iter()
+        .map(|s| Spanned::new(s.of(text).to_string(), s))
+        .collect()
 }

@@ -55,6 +55,7 @@ pub fn gather(text: &str, atoms: &[Atom], taken: &[(usize, usize)]) -> Statement
         atoms,
         taken,
         out: Statements::default(),
+        foreign: Vec::new(),
     };
     let mut i = 0;
     while i < atoms.len() {
@@ -64,6 +65,16 @@ pub fn gather(text: &str, atoms: &[Atom], taken: &[(usize, usize)]) -> Statement
         }
         i = g.statement(i).max(i + 1);
     }
+    // an instant under a label of its own ("Last negative: …") is not that of the observation, if there is another
+    let labels = g.foreign;
+    g.out.instants.sort_by_key(|i| labels.contains(&i.span));
+    if g.out
+        .instants
+        .iter()
+        .any(|i| !labels.contains(&i.span) && i.date.is_some())
+    {
+        g.out.instants.retain(|i| !labels.contains(&i.span));
+    }
     g.out
 }
 
@@ -72,6 +83,8 @@ struct Gatherer<'a, 't> {
     atoms: &'a [Atom<'t>],
     taken: &'a [(usize, usize)],
     out: Statements,
+    /// Instants under a label that says something else.
+    foreign: Vec<Span>,
 }
 
 impl<'t> Gatherer<'_, 't> {
@@ -80,7 +93,12 @@ impl<'t> Gatherer<'_, 't> {
         let atom = &self.atoms[i];
         match &atom.kind {
             Kind::Stet(s) => self.out.stets.push(s.clone()),
-            Kind::Instant(instant) => self.out.instants.push((**instant).clone()),
+            Kind::Instant(instant) => {
+                if self.foreign_label(i) {
+                    self.foreign.push(instant.span);
+                }
+                self.out.instants.push((**instant).clone());
+            }
             Kind::Equinox(t) => {
                 if !t.weak || (t.tag.misspelt && self.bracketed(i)) {
                     self.out.tags.push(Spanned::new(*t, atom.span));
@@ -103,9 +121,31 @@ impl<'t> Gatherer<'_, 't> {
                     site.elevation_m = Some(*metres);
                 }
             }
+            // "Positions for 1950.0:"
+            Kind::Run(r)
+                if r.numbers.len() == 1
+                    && r.numbers[0].0.places == 1
+                    && self.heads_positions(i) =>
+            {
+                if let Ok((rest, t)) = super::equinox::equinox_year(Text::window(self.text, r.span))
+                    && rest.is_empty()
+                {
+                    self.out
+                        .tags
+                        .push(Spanned::new(Tagged { weak: false, ..t }, r.span));
+                }
+            }
             Kind::Angle(a) if a.parts()[0].mark == Mark::Colon && a.sign.is_none() => {
                 // "Time: 22:31", "at 22:31:05": a clock time without a zone
-                let led = i > 0 && (self.led_by(i, Word::Time) || self.led_by(i, Word::Date));
+                // or at the head of a row
+                let heads = i == 0 || matches!(self.atoms[i - 1].kind, Kind::LineEnd);
+                let led = heads
+                    && a.parts().len() <= 3
+                    && self
+                        .taken
+                        .iter()
+                        .any(|(from, _)| *from > i && *from <= i + 3)
+                    || i > 0 && (self.led_by(i, Word::Time) || self.led_by(i, Word::Date));
                 if led
                     && let Ok((_, clock)) = super::instant::clock(Text::window(
                         self.text,
@@ -143,7 +183,7 @@ impl<'t> Gatherer<'_, 't> {
     fn word(&mut self, i: usize, meanings: &[Word]) -> usize {
         let atom = &self.atoms[i];
         let is = |w: Word| meanings.contains(&w);
-        if is(Word::All) {
+        if is(Word::All) || is(Word::Position) {
             self.out.all = true;
         }
         if is(Word::Night) || is(Word::Date) {
@@ -218,6 +258,40 @@ impl<'t> Gatherer<'_, 't> {
                     .unwrap_or(self.atoms.len());
             }
         }
+        // latitude and longitude on lines of their own
+        if (is(Word::Latitude) || is(Word::Longitude))
+            && self.label_mark(i)
+            && let Some((angle, next)) = self.value(i + 1)
+        {
+            let latitude = is(Word::Latitude) && !is(Word::Longitude);
+            match self.out.sites.last_mut() {
+                Some(s)
+                    if latitude
+                        && s.latitude.is_none()
+                        && (s.name.is_some() || s.longitude.is_some()) =>
+                {
+                    s.latitude = Some(angle);
+                    s.span = s.span.cover(angle.span);
+                }
+                Some(s) if !latitude && s.longitude.is_none() => {
+                    s.longitude = Some(angle);
+                    s.span = s.span.cover(angle.span);
+                }
+                _ => {
+                    let mut s = SiteWritten {
+                        span: angle.span,
+                        ..SiteWritten::default()
+                    };
+                    if latitude {
+                        s.latitude = Some(angle);
+                    } else {
+                        s.longitude = Some(angle);
+                    }
+                    self.out.sites.push(s);
+                }
+            }
+            return next;
+        }
         if is(Word::Time) || is(Word::Date) {
             // "times UT", "times are in UT", "Date (UT)"
             let mut k = i + 1;
@@ -229,7 +303,7 @@ impl<'t> Gatherer<'_, 't> {
                     {
                         k += 1
                     }
-                    Kind::Plain if matches!(a.span.of(self.text), "in" | "en" | "im") => k += 1,
+                    Kind::Plain if k <= i + 3 => k += 1,
                     _ => break,
                 }
                 if k > i + 5 {
@@ -264,6 +338,9 @@ impl<'t> Gatherer<'_, 't> {
         ] {
             if is(word)
                 && !self.led_by(i, Word::NotAPosition)
+                && !(quantity == HorizonQuantity::Airmass
+                    && atom.span.len() == 1
+                    && !self.label_mark(i))
                 && let Some((angle, next)) = self.value(i + 1)
             {
                 let single = atom.span.len() <= 2;
@@ -310,7 +387,12 @@ impl<'t> Gatherer<'_, 't> {
             self.out.constellation = Some(name);
         }
         if is(Word::Magnitude) {
-            let limiting = i > 0
+            let near = self.atoms[i.saturating_sub(5)..=i]
+                .iter()
+                .map(|a| a.span.of(self.text).to_lowercase());
+            let limiting = near.clone().any(|w| {
+                w.starts_with("grenz") || w.starts_with("limit") || w.starts_with("límit")
+            }) || i > 0
                 && self.atoms[i - 1]
                     .span
                     .of(self.text)
@@ -539,7 +621,23 @@ impl<'t> Gatherer<'_, 't> {
                         .position(|(n, _)| n.places > 0)
                         .map_or(r.numbers.len(), |d| d + 1)
                         .min(3);
-                    return r.angle(0, take).map(|a| (a, k + 1));
+                    let mut angle = r.angle(0, take)?;
+                    let mut next = k + 1;
+                    // a compass letter after it
+                    if let Some(Kind::Word(p)) = self.atoms.get(next).map(|a| &a.kind)
+                        && let Some(point) = p.meanings().find_map(|w| match w {
+                            Word::Compass(c) => Some(c),
+                            _ => None,
+                        })
+                        && self.atoms[next]
+                            .span
+                            .of(self.text)
+                            .starts_with(char::is_uppercase)
+                    {
+                        angle.compass = Some(Spanned::new(point, self.atoms[next].span));
+                        next += 1;
+                    }
+                    return Some((angle, next));
                 }
                 Kind::Mark(':' | '=' | '.' | '(' | '~' | '≈' | ',') => {}
                 Kind::Word(p) if p.means(Word::Filler) || p.means(Word::At) => {}
@@ -577,6 +675,56 @@ impl<'t> Gatherer<'_, 't> {
             }
         }
         false
+    }
+
+    /// "Last negative:" opens its line: a label of words that mean no date, time, site or object.
+    fn foreign_label(&self, i: usize) -> bool {
+        let line = self.atoms[i].line;
+        let start = self.atoms[..i]
+            .iter()
+            .rposition(|a| a.line != line || matches!(a.kind, Kind::LineEnd))
+            .map_or(0, |k| k + 1);
+        let label = &self.atoms[start..i];
+        let Some((last, words)) = label.split_last() else {
+            return false;
+        };
+        const OWN: [Word; 7] = [
+            Word::Date,
+            Word::Time,
+            Word::Night,
+            Word::Object,
+            Word::Position,
+            Word::Universal,
+            Word::Found,
+        ];
+        last.is_mark(':')
+            && (1..=3).contains(&words.len())
+            && words
+                .iter()
+                .all(|a| matches!(a.kind, Kind::Plain | Kind::Word(_)))
+            && words.iter().any(|a| matches!(a.kind, Kind::Plain))
+            && !words
+                .iter()
+                .any(|a| OWN.iter().any(|w| a.means(*w)) || a.means(Word::New))
+            && !self
+                .taken
+                .iter()
+                .any(|(a, _)| self.atoms.get(*a).is_some_and(|p| p.line == line))
+    }
+
+    /// A line that speaks of positions, or one closed by a colon, and holds none.
+    fn heads_positions(&self, i: usize) -> bool {
+        let line = self.atoms[i].line;
+        let of_line: Vec<&Atom> = self
+            .atoms
+            .iter()
+            .filter(|a| a.line == line && !matches!(a.kind, Kind::LineEnd))
+            .collect();
+        let colon = of_line.last().is_some_and(|a| a.is_mark(':'));
+        let speaks = of_line.iter().any(|a| a.means(Word::Position));
+        (colon || speaks)
+            && of_line.len() <= 12
+            && !of_line.iter().any(|a| matches!(a.kind, Kind::Instant(_)))
     }
 
     fn bracketed(&self, i: usize) -> bool {

@@ -1,12 +1,8 @@
 //! Tables: a head that names its columns, and rows read by it (CSV, TSV, pipes, Markdown, aligned columns).
 
-use super::equinox::{Tagged, equinox_year};
-use super::instant::zone;
+use super::head::{Column, Head};
 use super::row::{self, Row};
-use super::scan::{Kind, atoms};
-use super::text::Text;
-use super::words::Word;
-use crate::report::{AngleUnit, JulianCount, Zone};
+use crate::report::{DateWritten, InstantWritten};
 use crate::sheet::{Block, Sheet};
 use crate::span::{Span, Spanned};
 
@@ -15,55 +11,6 @@ use crate::span::{Span, Spanned};
 pub(super) enum Layout {
     Delimited(char),
     Aligned,
-}
-
-/// What a column holds.
-#[derive(Clone, Copy, PartialEq, Eq, Debug)]
-pub(super) enum Column {
-    Ra,
-    Dec,
-    Both,
-    HourAngle,
-    Altitude,
-    Azimuth,
-    Object,
-    Observer,
-    Instant,
-    Date,
-    Clock,
-    Julian(JulianCount),
-    Equinox,
-    Site,
-    Latitude,
-    Longitude,
-    Elevation,
-    Magnitude,
-    Constellation,
-    Uncertainty,
-    Note,
-}
-
-/// One column's head.
-#[derive(Clone, Copy, Debug)]
-pub(super) struct ColumnHead {
-    pub column: Column,
-    pub span: Span,
-    pub tag: Option<Spanned<Tagged>>,
-    pub unit: Option<AngleUnit>,
-}
-
-/// A table's head.
-#[derive(Clone, Debug)]
-pub struct Head {
-    /// Its line, from 0.
-    pub line: usize,
-    /// A tag that stands over all columns (or over the right ascension).
-    pub tag: Option<Spanned<Tagged>>,
-    /// The zone its time column names.
-    pub zone: Option<Spanned<Zone>>,
-    pub(super) layout: Layout,
-    pub(super) columns: Vec<ColumnHead>,
-    pub(super) feet: bool,
 }
 
 /// The head of a table at `line`, if that is one: it names a right ascension and a declination (or a position) in two or more cells.
@@ -93,18 +40,12 @@ fn head_in(sheet: &Sheet, line: usize, layout: Layout) -> Option<Head> {
     if cells.len() < 2 {
         return None;
     }
-    let mut head = Head {
-        line,
-        tag: None,
-        zone: None,
-        layout,
-        columns: Vec::new(),
-        feet: false,
-    };
+    let mut head = Head::new(line, layout);
     for &cell in &cells {
         let column = head.column(&sheet.text, cell)?;
         head.columns.push(column);
     }
+    head.settle();
     let has = |c: Column| head.columns.iter().any(|k| k.column == c);
     let names_position = has(Column::Ra) && has(Column::Dec)
         || has(Column::Both)
@@ -115,7 +56,7 @@ fn head_in(sheet: &Sheet, line: usize, layout: Layout) -> Option<Head> {
         .iter()
         .filter(|c| c.column != Column::Note)
         .count();
-    (names_position && known * 2 >= cells.len()).then_some(head)
+    (names_position && (known * 2 >= cells.len() || has(Column::Ra))).then_some(head)
 }
 
 /// The rows of a head, up to `end` or the first line that is none.
@@ -127,6 +68,16 @@ pub fn rows(sheet: &Sheet, head: &Head, end: usize) -> Vec<Row> {
 pub fn rows_from(sheet: &Sheet, head: &Head, from: usize, end: usize) -> Vec<Row> {
     let mut found: Vec<Row> = Vec::new();
     let mut misses = 0;
+    let mut head = head.clone();
+    // a second line of the head may name the year: "2024   h m   o '"
+    if from == head.line + 1
+        && from < end
+        && head.year.is_none()
+        && let Some(year) = year_line(sheet, from)
+    {
+        head.year = Some(year);
+    }
+    let head = &head;
     for line in from..end {
         let body = sheet.lines()[line].body;
         let words = body.of(&sheet.text);
@@ -136,6 +87,10 @@ pub fn rows_from(sheet: &Sheet, head: &Head, from: usize, end: usize) -> Vec<Row
                 '-' | '=' | '|' | ':' | '+' | ' ' | '\t' | '_' | '─' | '┼'
             )
         }) {
+            continue;
+        }
+        // a comment is no row
+        if matches!(head.layout, Layout::Delimited(_)) && words.starts_with(['#', '%']) {
             continue;
         }
         // the head repeated, or another one
@@ -157,6 +112,7 @@ pub fn rows_from(sheet: &Sheet, head: &Head, from: usize, end: usize) -> Vec<Row
         }
     }
     padded_seconds(&mut found);
+    carried_dates(head, &mut found);
     found
 }
 
@@ -179,6 +135,87 @@ fn padded_seconds(rows: &mut [Row]) {
                 if let Some(clock) = &mut instant.clock {
                     clock.second = None;
                 }
+            }
+        }
+    }
+}
+
+/// The year that opens a line of units.
+fn year_line(sheet: &Sheet, line: usize) -> Option<i32> {
+    let words = sheet.lines()[line].body.of(&sheet.text);
+    let first = words.split_whitespace().next()?;
+    let year: i32 = first.parse().ok()?;
+    let units = words
+        .split_whitespace()
+        .skip(1)
+        .all(|w| !w.contains(|c: char| c.is_ascii_digit()));
+    ((1500..2300).contains(&year) && first.len() == 4 && units).then_some(year)
+}
+
+/// Dates that leave out their year or month take them from the row above, or the year from the head.
+fn carried_dates(head: &Head, rows: &mut [Row]) {
+    let mut last: Option<(i32, u8, u32, f64)> = head.year.map(|y| (y, 4, 1, 0.0));
+    for row in rows {
+        if let Some((day, span)) = row.day_only
+            && let Some((mut year, digits, mut month, before)) = last
+        {
+            // a smaller day has passed into the next month
+            if day.value() < before {
+                (year, month) = if month == 12 {
+                    (year + 1, 1)
+                } else {
+                    (year, month + 1)
+                };
+            }
+            let written = DateWritten::Calendar {
+                year,
+                year_digits: digits,
+                month,
+                day,
+                to_day: None,
+                order_unclear: false,
+            };
+            let zone = row.said.instants.first().and_then(|i| i.zone.clone());
+            let clock = row
+                .said
+                .instants
+                .first()
+                .filter(|i| i.date.is_none())
+                .and_then(|i| i.clock);
+            row.said.instants.retain(|i| i.date.is_some());
+            row.said.instants.insert(
+                0,
+                InstantWritten {
+                    date: Some(Spanned::new(written, span)),
+                    clock,
+                    zone,
+                    until: None,
+                    plus_s: None,
+                    weekday: None,
+                    clock_unread: None,
+                    span,
+                },
+            );
+        }
+        let Some(date) = row.said.instants.first_mut().and_then(|i| i.date.as_mut()) else {
+            continue;
+        };
+        if let DateWritten::Calendar {
+            year,
+            year_digits,
+            month,
+            day,
+            ..
+        } = &mut date.value
+        {
+            if *year_digits == 0
+                && let Some((y, digits, m, _)) = last
+            {
+                *year = if *month + 6 < m { y + 1 } else { y };
+                *year_digits = digits;
+            }
+            if *year_digits > 0 {
+                last = Some((*year, *year_digits, *month, day.value()));
             }
         }
     }
@@ -277,175 +314,27 @@ fn trimmed(text: &str, span: Span) -> Span {
     Span::new(start, end)
 }
 
-impl Head {
-    /// What a head's cell names; `None` where the line can be no head (it holds a number that is no equinox).
-    fn column(&mut self, text: &str, cell: Span) -> Option<ColumnHead> {
-        let mut words = Vec::new();
-        atoms(Text::window(text, cell), 0, &mut false, &mut words);
-        let mut column = Column::Note;
-        let mut rank = 0;
-        let mut set = |c: Column, r: u8| {
-            if r > rank {
-                rank = r;
-                column = c;
-            }
-        };
-        let mut zone_here = None;
-        let mut unit = None;
-        let mut tag_here = None;
-        let mut clock_word = false;
-        for atom in &words {
-            match &atom.kind {
-                Kind::Word(p) => {
-                    for w in p.meanings() {
-                        match w {
-                            Word::RightAscension => set(Column::Ra, 9),
-                            Word::Declination => set(Column::Dec, 9),
-                            Word::Both => set(Column::Both, 10),
-                            Word::Position => set(Column::Both, 4),
-                            Word::HourAngle => set(Column::HourAngle, 8),
-                            Word::Azimuth => set(Column::Azimuth, 8),
-                            Word::Elevation if atom.span.len() == 1 => {
-                                unit = Some(AngleUnit::Hours)
-                            }
-                            Word::Elevation => set(Column::Elevation, 7),
-                            Word::Altitude => set(Column::Altitude, 6),
-                            Word::Object => set(Column::Object, 5),
-                            Word::Observer => set(Column::Observer, 6),
-                            Word::Date => set(Column::Date, 6),
-                            Word::Time => {
-                                set(Column::Clock, 5);
-                                clock_word = true;
-                            }
-                            Word::Julian => set(Column::Julian(JulianCount::Jd), 7),
-                            Word::ModifiedJulian => set(Column::Julian(JulianCount::Mjd), 7),
-                            Word::HeliocentricJulian => set(Column::Julian(JulianCount::Hjd), 7),
-                            Word::BarycentricJulian => set(Column::Julian(JulianCount::Bjd), 7),
-                            Word::Universal
-                            | Word::LocalTime
-                            | Word::Terrestrial
-                            | Word::ZoneAbbreviation
-                            | Word::Atomic
-                            | Word::Barycentric => {
-                                zone_here =
-                                    zone(Text::window(text, Span::new(atom.span.start, cell.end)))
-                                        .ok()
-                                        .map(|(_, z)| z);
-                                set(Column::Instant, 3);
-                            }
-                            Word::Equinox => set(Column::Equinox, 6),
-                            Word::Epoch => set(Column::Equinox, 4),
-                            Word::Site => set(Column::Site, 6),
-                            Word::Latitude => set(Column::Latitude, 8),
-                            Word::Longitude => set(Column::Longitude, 8),
-                            Word::Magnitude => set(Column::Magnitude, 5),
-                            Word::Constellation | Word::ConstellationName(_) => {
-                                set(Column::Constellation, 3)
-                            }
-                            Word::Uncertainty => set(Column::Uncertainty, 10),
-                            Word::Degrees => unit = Some(AngleUnit::Degrees),
-                            Word::Hours => unit = Some(AngleUnit::Hours),
-                            Word::Feet => {
-                                self.feet = true;
-                                set(Column::Elevation, 7);
-                            }
-                            Word::Metres => set(Column::Elevation, 7),
-                            _ => {}
-                        }
-                    }
-                }
-                Kind::Equinox(t) => tag_here = Some(Spanned::new(*t, atom.span)),
-                Kind::Run(r) if r.numbers.len() == 1 => {
-                    match equinox_year(Text::window(text, r.numbers[0].1)) {
-                        Ok((rest, t)) if rest.is_empty() => {
-                            tag_here = Some(Spanned::new(t, atom.span))
-                        }
-                        _ => return None,
-                    }
-                }
-                Kind::Angle(_)
-                | Kind::Run(_)
-                | Kind::Instant(_)
-                | Kind::Site(_)
-                | Kind::Joined(_) => return None,
-                Kind::Plain => match atom.span.of(text) {
-                    "d" | "°" => unit = Some(AngleUnit::Degrees),
-                    "h" | "hms" | "hh" => unit = unit.or(Some(AngleUnit::Hours)),
-                    "hhmmss" => unit = Some(AngleUnit::Hours),
-                    _ => {}
-                },
-                Kind::Mark('°') => unit = Some(AngleUnit::Degrees),
-                _ => {}
-            }
-        }
-        if matches!(
-            column,
-            Column::Date | Column::Clock | Column::Instant | Column::Note
-        ) && zone_here.is_some()
-        {
-            self.zone = zone_here;
-            column = match column {
-                Column::Date if clock_word => Column::Instant,
-                Column::Note => Column::Instant,
-                c => c,
-            };
-        }
-        if column == Column::Date && clock_word {
-            column = Column::Instant;
-        }
-        if matches!(
-            column,
-            Column::Ra | Column::Dec | Column::Both | Column::Equinox | Column::Note
-        ) && let Some(t) = tag_here
-            && (self.tag.is_none() || column == Column::Ra)
-        {
-            self.tag = Some(t);
-        }
-        Some(ColumnHead {
-            column,
-            span: cell,
-            tag: tag_here,
-            unit,
-        })
-    }
-}
-
-/// Cells by where the head's words stand, where the count does not tell (an empty cell, a value that touches its neighbour).
+/// Cells by where the head's words stand, where the count does not tell: each goes to the column it stands under or is nearest to.
 pub(super) fn by_column(sheet: &Sheet, head: &Head, line: usize) -> Option<Vec<Span>> {
     let text = &sheet.text;
-    let head_start = sheet.lines()[head.line].whole.start;
-    let whole = sheet.lines()[line].whole;
-    let column_of =
-        |offset: usize, start: usize| text.get(start..offset).map_or(0, |s| s.chars().count());
-    let starts: Vec<usize> = head
+    let columns_of = |span: Span, line: usize| {
+        let start = sheet.lines()[line].whole.start;
+        let count = |offset: usize| text.get(start..offset).map_or(0, |s| s.chars().count());
+        (count(span.start), count(span.end))
+    };
+    let heads: Vec<(usize, usize)> = head
         .columns
         .iter()
-        .map(|c| column_of(c.span.start, head_start))
+        .map(|c| columns_of(c.span, head.line))
         .collect();
-    let words = whole.of(text);
-    let chars: Vec<(usize, char)> = words.char_indices().collect();
-    let mut cuts = Vec::new();
-    for (n, &at) in starts.iter().enumerate() {
-        // the cut moves left to the nearest blank, so that no value is cut
-        let mut k = if n == 0 { 0 } else { at.min(chars.len()) };
-        while k > 0 && k < chars.len() && n > 0 && !super::text::is_blank(chars[k - 1].1) {
-            k -= 1;
-        }
-        cuts.push(k);
+    let mut found: Vec<Option<Span>> = vec![None; heads.len()];
+    for cell in cells(text, sheet.lines()[line].body, Layout::Aligned) {
+        let (from, to) = columns_of(cell, line);
+        let shared = |h: &(usize, usize)| to.min(h.1) as isize - from.max(h.0) as isize;
+        // the one it shares most with; under none, the nearest
+        let best = (0..heads.len()).max_by_key(|&i| shared(&heads[i]))?;
+        found[best] = Some(found[best].map_or(cell, |s| s.cover(cell)));
     }
-    let mut found = Vec::new();
-    for (n, &cut) in cuts.iter().enumerate() {
-        let from = chars.get(cut).map_or(words.len(), |c| c.0);
-        let to = cuts
-            .get(n + 1)
-            .and_then(|c| chars.get(*c))
-            .map_or(words.len(), |c| c.0)
-            .max(from);
-        found.push(trimmed(
-            text,
-            Span::new(whole.start + from, whole.start + to),
-        ));
-    }
-    // a value cut by a column is no row of this table
-    found.iter().any(|s| !s.is_empty()).then_some(found)
+    let empty = Span::new(sheet.lines()[line].body.end, sheet.lines()[line].body.end);
+    Some(found.into_iter().map(|s| s.unwrap_or(empty)).collect())
 }

@@ -96,11 +96,13 @@ impl<'a> Text<'a> {
     }
 }
 
-/// A blank within a line.
+/// A blank within a line; a line end inside a window of wrapped prose is one too.
 pub fn is_blank(c: char) -> bool {
     matches!(
         c,
-        ' ' | '\t'
+        ' ' | '\n'
+            | '\r'
+            | '\t'
             | '\u{a0}'
             | '\u{2009}'
             | '\u{202f}'

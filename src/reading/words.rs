@@ -22,6 +22,7 @@ pub enum Word {
     Ecliptic,
     Latitude,
     Longitude,
+    GeographicPair,
     Elevation,
     Site,
     Observer,

@@ -17,17 +17,19 @@ pub use target::parse_target;
 
 use crate::house::{House, WhenMissing};
 use crate::report::{EquinoxTag, Frame, Meant, ReadPosition, Report};
+use crate::sky::almanac::{Almanac, View};
 use crate::sky::moment::{Moment, Station};
-use crate::sky::{Direction, constellations};
+use crate::sky::{Direction, Ground, constellations};
 use std::cell::OnceCell;
+use std::rc::Rc;
 
 /// What a report means under the house rules, restated in the frame `to`. Never fails: what cannot be had is `None`.
 pub fn mean(report: &Report, house: &House, to: Frame) -> Meant {
-    mean_by(report, house, to, Moment::new)
+    mean_by(report, house, to, &Almanac::new())
 }
 
-/// The same with another way to an instant: [`Moment::shared`] for a run of many reports.
-pub fn mean_by(report: &Report, house: &House, to: Frame, clock: Clock) -> Meant {
+/// The same with the instants and sites of an almanac, which many reports share.
+pub fn mean_by(report: &Report, house: &House, to: Frame, almanac: &Almanac) -> Meant {
     let mut meant = Meant::default();
     (meant.site, meant.site_trouble, meant.site_register_deg) = site::resolve(report, house);
     (meant.instant, meant.instant_trouble) = instant::resolve(report, house, meant.site.as_ref());
@@ -49,7 +51,7 @@ pub fn mean_by(report: &Report, house: &House, to: Frame, clock: Clock) -> Meant
     };
     meant.read = Some(read);
 
-    let sky = Sky::new(&meant, clock);
+    let sky = Sky::new(&meant, almanac);
     let written = to::Written {
         read,
         from_origin: understood.from_origin,
@@ -60,7 +62,7 @@ pub fn mean_by(report: &Report, house: &House, to: Frame, clock: Clock) -> Meant
     if let Some(reduced) = meant.reduced {
         let icrs = Direction::new(reduced.icrs_ra_deg, reduced.icrs_dec_deg);
         meant.constellation = Some(constellations::at(icrs));
-        meant.horizon = sky.station().map(|station| horizon::over(icrs, station));
+        meant.horizon = sky.view().and_then(|view| horizon::over(icrs, view));
     }
     meant
 }
@@ -68,24 +70,21 @@ pub fn mean_by(report: &Report, house: &House, to: Frame, clock: Clock) -> Meant
 /// An instant known to no better than this says nothing of the horizon, seconds.
 const HALF_DAY_S: f64 = 43_200.0;
 
-/// A way from UTC to what the sky needs of an instant.
-pub type Clock = fn((f64, f64)) -> Moment;
-
-/// The instant and the site of a report as the sky needs them, each computed when first asked for, and once.
-pub struct Sky {
+/// The instant and the site of a report as the sky needs them, each looked up when first asked for, and once.
+pub struct Sky<'a> {
     /// UTC of the observation, however doubtful its hour.
     utc: Option<(f64, f64)>,
     /// Nothing is doubtful about the instant and the site.
     sure: bool,
-    ground: Option<crate::sky::Ground>,
-    clock: Clock,
-    moment: OnceCell<Moment>,
-    station: OnceCell<Station>,
+    ground: Option<Ground>,
+    almanac: &'a Almanac,
+    geocentric: OnceCell<Rc<View>>,
+    topocentric: OnceCell<Rc<View>>,
 }
 
-impl Sky {
+impl<'a> Sky<'a> {
     /// Of a report whose instant and site are resolved.
-    pub fn new(meant: &Meant, clock: Clock) -> Sky {
+    pub fn new(meant: &Meant, almanac: &'a Almanac) -> Sky<'a> {
         Sky {
             utc: meant
                 .instant
@@ -95,14 +94,14 @@ impl Sky {
             sure: meant.instant_trouble.is_none()
                 && meant.site_trouble.is_none()
                 && meant.instant.is_none_or(|i| i.step_s < HALF_DAY_S),
-            ground: meant.site.as_ref().map(|s| crate::sky::Ground {
+            ground: meant.site.as_ref().map(|s| Ground {
                 latitude_deg: s.latitude_deg,
                 longitude_deg: s.longitude_deg,
                 elevation_m: s.elevation_m.unwrap_or(0.0),
             }),
-            clock,
-            moment: OnceCell::new(),
-            station: OnceCell::new(),
+            almanac,
+            geocentric: OnceCell::new(),
+            topocentric: OnceCell::new(),
         }
     }
 
@@ -114,15 +113,21 @@ impl Sky {
     /// The instant, if there is one.
     pub fn moment(&self) -> Option<&Moment> {
         let utc = self.utc?;
-        Some(self.moment.get_or_init(|| (self.clock)(utc)))
+        let view = self.geocentric.get_or_init(|| self.almanac.view(utc, None));
+        Some(&view.moment)
     }
 
-    /// The instant at the site, if there are both and nothing is doubtful about them.
-    pub fn station(&self) -> Option<&Station> {
-        let (true, Some(ground)) = (self.sure, self.ground) else {
+    /// The sky over the site at the instant, if there are both and nothing is doubtful about them.
+    pub fn view(&self) -> Option<&View> {
+        let (true, Some(ground), Some(utc)) = (self.sure, self.ground, self.utc) else {
             return None;
         };
-        let moment = self.moment()?;
-        Some(self.station.get_or_init(|| moment.station(ground)))
+        let look = || self.almanac.view(utc, Some(ground));
+        Some(self.topocentric.get_or_init(look))
+    }
+
+    /// The instant at the site, likewise.
+    pub fn station(&self) -> Option<&Station> {
+        self.view()?.station.as_ref()
     }
 }

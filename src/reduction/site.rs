@@ -16,8 +16,18 @@ pub fn resolve(
 ) -> (Option<SiteMeant>, Option<SiteTrouble>, Option<(f64, f64)>) {
     match &report.site {
         Some((written, _)) => written_site(written, house),
-        None => (observers_site(report, house).map(registered), None, None),
+        None => {
+            let site = mentioned(report, house).or_else(|| observers_site(report, house));
+            (site.map(registered), None, None)
+        }
     }
+}
+
+/// The one site of the register that the report's words name in passing ("…, 22:31 UT, Skarn Head").
+fn mentioned<'h>(report: &Report, house: &'h House) -> Option<&'h RegisteredSite> {
+    let mut named = report.mentions.iter().filter_map(|m| house.site(&m.value));
+    let first = named.next()?;
+    named.all(|s| s.name == first.name).then_some(first)
 }
 
 fn observers_site<'h>(report: &Report, house: &'h House) -> Option<&'h RegisteredSite> {

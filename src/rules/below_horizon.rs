@@ -25,7 +25,7 @@
 //! ## What to do
 //! Ask for the time and its zone, then for the site. To let it pass: `[stet below-horizon: reason]`.
 
-use super::common::identity::{ground, here};
+use super::common::identity::here;
 use super::common::sight::{altitudes, horizon_allowance_deg, when_up};
 use super::common::words::{instant, rough};
 use super::{Case, Findings, Rule};
@@ -53,14 +53,12 @@ fn check(case: &Case, out: &mut Findings) {
     if altitudes.highest_deg >= -horizon_allowance_deg(case) {
         return;
     }
-    let (Some(icrs), Some(ground)) = (here(case.meant), ground(case.meant)) else {
-        return;
-    };
+    let Some(icrs) = here(case.meant) else { return };
     // a slip's trial asks only whether, and the hours cost a search
     let up = if case.text.is_empty() {
         String::new()
     } else {
-        when_up(case, icrs, ground)
+        when_up(case, icrs)
     };
     let mut up = up;
     if let Some(first) = up.get_mut(0..1) {

@@ -25,7 +25,7 @@
 //! ## What to do
 //! Ask for the time and its zone. To let it pass: `[stet daylight: reason]`.
 
-use super::common::identity::{is_body, named};
+use super::common::identity::is_body;
 use super::common::sight::sun_altitudes;
 use super::common::words::{instant, rough};
 use super::{Case, Findings, Rule};
@@ -88,6 +88,6 @@ fn is_bright(case: &Case) -> bool {
     };
     let stated = case.report.magnitude.as_ref().map(|m| m.value);
     stated
-        .or_else(|| named(case.report, case.house).and_then(|known| known.magnitude()))
+        .or_else(|| case.named.and_then(|known| known.magnitude()))
         .is_some_and(|magnitude| magnitude <= limit)
 }

@@ -26,7 +26,7 @@
 //! ## What to do
 //! Write the equinox after the position, or once at the head of the sheet. To let it pass: `[stet equinox-missing: reason]`.
 
-use super::common::identity::{here, named};
+use super::common::identity::here;
 use super::common::words::apart;
 use super::{Case, Findings, Rule};
 use crate::house::WhenMissing;
@@ -108,7 +108,7 @@ fn fitting(case: &Case) -> Option<String> {
         || !report.stated_horizon.is_empty()
         || !report.other_forms.is_empty()
         || !report.stated_other.is_empty();
-    let known = named(report, case.house);
+    let known = case.named;
     if !tells && known.is_none() {
         return None;
     }

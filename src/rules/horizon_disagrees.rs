@@ -27,10 +27,11 @@
 //! Ask for the time and its zone, and for the reading. To let it pass: `[stet horizon-disagrees: reason]`.
 
 use super::common::identity::{ground, here};
-use super::common::words::{later, rough};
+use super::common::sight::view;
+use super::common::words::rough;
 use super::{Case, Findings, Rule};
 use crate::report::{HorizonQuantity, Mark, PositionKind, StatedHorizon, Weight};
-use crate::sky::horizon::{self, AltAz, refraction_deg};
+use crate::sky::horizon::{AltAz, Course, refraction_deg};
 
 pub(super) const RULE: Rule = Rule {
     name: "horizon-disagrees",
@@ -120,12 +121,15 @@ fn check(case: &Case, out: &mut Findings) {
         hour_angle_h: computed.hour_angle_h,
     };
     let reach = instant.step_s + if instant.heliocentric { 500.0 } else { 0.0 };
-    let moments: Vec<AltAz> = if reach <= 100.0 {
-        vec![nominal]
-    } else {
-        (-4..=8)
-            .map(|k| horizon::place(icrs, later(instant.utc, reach * f64::from(k) / 8.0), ground))
-            .collect()
+    let station = view(case).and_then(|view| view.station);
+    let moments: Vec<AltAz> = match station {
+        Some(station) if reach > 100.0 => {
+            let course = Course::of_star(icrs, &station);
+            (-4..=8)
+                .map(|k| course.after(reach * f64::from(k) / 8.0))
+                .collect()
+        }
+        _ => vec![nominal],
     };
     for written in &case.report.stated_horizon {
         let Some(said) = stated(written) else {

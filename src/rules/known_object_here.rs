@@ -25,11 +25,12 @@
 //! ## What to do
 //! Ask whether the known object was told apart from the new one. To let it pass: `[stet known-object-here: reason]`.
 
-use super::common::identity::{Known, body_name, ground, here, julian_year, named};
-use super::common::words::apart;
+use super::common::identity::{Known, body_name, ground, here, julian_year, middle_s};
+use super::common::words::{apart, later};
 use super::{Case, Findings, Rule};
 use crate::report::{Role, Weight};
-use crate::sky::bodies::Body;
+use crate::sky::bodies::{Body, roughly};
+use crate::sky::moment::Moment;
 use crate::sky::{Direction, catalogue, separation_deg};
 
 pub(super) const RULE: Rule = Rule {
@@ -47,7 +48,7 @@ fn check(case: &Case, out: &mut Findings) {
     else {
         return;
     };
-    if case.report.role != Role::Measured || named(case.report, case.house).is_some() {
+    if case.report.role != Role::Measured || case.named.is_some() {
         return;
     }
     let step = reduced.step_arcsec;
@@ -74,10 +75,10 @@ fn check(case: &Case, out: &mut Findings) {
 
 /// A planet within 10′, or the Moon's disc, with its distance in arcsec.
 fn body_here(case: &Case, icrs: Direction) -> Option<(String, f64)> {
-    case.meant.instant?;
+    let near = near_bodies(case, icrs)?;
     Body::ALL
         .into_iter()
-        .filter(|body| *body != Body::Sun)
+        .filter(|body| *body != Body::Sun && near(*body))
         .find_map(|body| {
             let expected = Known::Body(body).expected(case)?;
             let reach = match body {
@@ -101,19 +102,47 @@ fn body_here(case: &Case, icrs: Direction) -> Option<(String, f64)> {
         })
 }
 
+/// Which bodies are near enough for a closer look; `None` where none can be.
+///
+/// Far from the ecliptic there is none: Venus, the furthest from it, is at most 0.728 sin 3.39° = 0.043 au off its plane and
+/// at least 0.983 − 0.728 = 0.255 au away, so 9.7° (Mars 8.5°, Mercury 6.3°), the Moon 5.3° and 1.0° of parallax; a degree
+/// is left for the ecliptic's own motion over ten centuries (`tests/sky_bodies.rs`). Elsewhere a rough place tells.
+fn near_bodies(case: &Case, icrs: Direction) -> Option<impl Fn(Body) -> bool> {
+    let instant = case.meant.instant?;
+    // no planet moves faster than Mercury's 2.2° a day; besides motion 10′ of the rule, parallax, theory and a rough place's 2′
+    let motion_arcsec = 400.0 * (instant.step_s + 500.0) / 3600.0;
+    let reach_deg = (motion_arcsec + 600.0 + 300.0) / 3600.0;
+    let (sin_e, cos_e) = 23.4393_f64.to_radians().sin_cos();
+    let (ra, dec) = icrs.radians();
+    let sin_latitude = dec.sin() * cos_e - dec.cos() * sin_e * ra.sin();
+    if sin_latitude.abs() > (10.7 + reach_deg).min(90.0).to_radians().sin() {
+        return None;
+    }
+    let moment = Moment::quick(later(instant.utc, middle_s(&instant)));
+    Some(move |body| {
+        // the Moon's rough place has half a degree of theory and a degree of parallax more
+        let more = if body == Body::Moon { 1.6 } else { 0.0 };
+        separation_deg(icrs, roughly(body, &moment)) <= reach_deg + more
+    })
+}
+
 /// A star to V 6.5, a Messier object or one of the house's own within its reach, the nearest first.
 fn fixed_here(case: &Case, icrs: Direction, step: f64) -> Option<(String, f64)> {
     let reach = |radius: f64| radius.max(60.0).max((3.0 * step).min(600.0));
     let year = case.meant.instant.map_or(2000.0, |i| julian_year(i.utc));
     let from_catalogue = catalogue::near(icrs, 2.0)
         .into_iter()
-        .filter_map(|(entry, _)| {
+        .filter_map(|(entry, apart)| {
             let bright = entry.radius_arcsec > 0.0 || entry.v_mag.is_some_and(|v| v <= 6.5);
-            let distance = separation_deg(icrs, entry.at_epoch(year))
-                .min(separation_deg(icrs, entry.icrs))
-                * 3600.0;
-            (bright && distance <= reach(entry.radius_arcsec))
-                .then(|| (entry.name.to_string(), distance))
+            let reach = reach(entry.radius_arcsec);
+            // most are too far off however they move
+            let motion =
+                (entry.pm_ra_arcsec.abs() + entry.pm_dec_arcsec.abs()) * (year - 2000.0).abs();
+            if !bright || apart * 3600.0 > reach + motion + 1.0 {
+                return None;
+            }
+            let distance = separation_deg(icrs, entry.at_epoch(year)).min(apart) * 3600.0;
+            (distance <= reach).then(|| (entry.name.to_string(), distance))
         });
     let own = case.house.known_objects.iter().filter_map(|object| {
         let at = Direction {

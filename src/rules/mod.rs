@@ -48,7 +48,7 @@ mod tag_misspelt;
 mod zone_doubtful;
 mod zone_missing;
 
-pub use common::examine::{Selection, examine};
+pub use common::examine::{Desk, Selection, examine};
 pub use common::sisters::{Run, together};
 
 pub(crate) use common::examine::of_place_and_time;
@@ -60,7 +60,9 @@ pub(crate) use equinox_missing::usual as usual_equinoxes;
 
 use crate::house::House;
 use crate::report::{Finding, Meant, Report, Weight};
+use crate::sky::almanac::Almanac;
 use crate::span::Span;
+use common::identity::Known;
 
 /// Every rule, in the order of the design.
 pub const TABLE: &[Rule] = &[
@@ -143,6 +145,10 @@ pub struct Case<'a> {
     pub house: &'a House,
     /// What counts as now: UTC as a two-part Julian date.
     pub now_utc: (f64, f64),
+    /// Where the rules have instants and sites from.
+    pub almanac: &'a Almanac,
+    /// What the report's object name means, where it names something known.
+    pub named: Option<Known<'a>>,
     /// The sheet's text, for quoting the words of a span. Empty for a trial whose words nobody will read.
     pub text: &'a str,
 }

@@ -30,7 +30,7 @@ use super::common::identity::{here, is_body};
 use super::common::words::apart;
 use super::{Case, Findings, Rule};
 use crate::report::Weight;
-use crate::sky::bodies::{self, Body};
+use crate::sky::bodies::Body;
 use crate::sky::separation_deg;
 
 pub(super) const RULE: Rule = Rule {
@@ -51,7 +51,10 @@ fn check(case: &Case, out: &mut Findings) {
     };
     let separation = match case.meant.horizon {
         Some(h) => h.sun_separation_deg,
-        None => separation_deg(icrs, bodies::place(Body::Sun, instant.utc, None).icrs),
+        None => {
+            let (sun, _) = case.almanac.view(instant.utc, None).direction(Body::Sun);
+            separation_deg(icrs, sun)
+        }
     };
     if separation >= 15.0 {
         return;

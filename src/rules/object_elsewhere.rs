@@ -25,7 +25,7 @@
 //! ## What to do
 //! Ask which is right, the name or the position. To let it pass: `[stet object-elsewhere: reason]`.
 
-use super::common::identity::{Expected, here, named};
+use super::common::identity::{Expected, here};
 use super::common::words::{apart, place};
 use super::{Case, Findings, Rule};
 use crate::report::{Role, Weight};
@@ -57,8 +57,7 @@ fn check(case: &Case, out: &mut Findings) {
         return;
     }
     let Some(icrs) = here(case.meant) else { return };
-    let Some(expected) = named(case.report, case.house).and_then(|known| known.expected(case))
-    else {
+    let Some(expected) = case.named.and_then(|known| known.expected(case)) else {
         return;
     };
     let distance = separation_deg(icrs, expected.icrs) * 3600.0;

@@ -1,5 +1,6 @@
 //! Bytes to text, with the way back: which bytes on disk carry which words.
 
+use super::map::Map;
 use std::fmt;
 
 /// Why bytes are no sheet.
@@ -22,54 +23,6 @@ pub(super) struct Decoded {
     pub text: String,
     pub notes: Vec<String>,
     pub map: Map,
-}
-
-/// From offsets in the text to offsets on disk: stretches in which both advance at one rate.
-#[derive(Clone, Debug, Default)]
-pub(super) struct Map {
-    stretches: Vec<Stretch>,
-}
-
-#[derive(Clone, Copy, Debug)]
-struct Stretch {
-    text: usize,
-    disk: usize,
-    text_step: usize,
-    disk_step: usize,
-}
-
-impl Map {
-    fn shifted(by: usize) -> Map {
-        Map {
-            stretches: vec![Stretch {
-                text: 0,
-                disk: by,
-                text_step: 1,
-                disk_step: 1,
-            }],
-        }
-    }
-
-    fn push(&mut self, text: usize, disk: usize, text_step: usize, disk_step: usize) {
-        match self.stretches.last() {
-            Some(s) if s.text_step == text_step && s.disk_step == disk_step => {}
-            _ => self.stretches.push(Stretch {
-                text,
-                disk,
-                text_step,
-                disk_step,
-            }),
-        }
-    }
-
-    /// The offset on disk of the character at a text offset.
-    pub fn on_disk(&self, text: usize) -> usize {
-        let i = self.stretches.partition_point(|s| s.text <= text);
-        match i.checked_sub(1).and_then(|i| self.stretches.get(i)) {
-            Some(s) => s.disk + (text - s.text) / s.text_step * s.disk_step,
-            None => text,
-        }
-    }
 }
 
 pub(super) fn decode(bytes: &[u8]) -> Result<Decoded, SheetError> {

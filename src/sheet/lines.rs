@@ -11,6 +11,8 @@ pub struct Line {
     pub body: Span,
     /// How deep it is quoted.
     pub depth: u8,
+    /// It is no part of the reports: a mail's head, who wrote what follows, a signature, a part that is not read.
+    pub aside: bool,
 }
 
 /// Lines that belong together: up to a blank line or another depth of quoting.
@@ -72,6 +74,7 @@ fn line(text: &str, start: usize, end: usize) -> Line {
         whole: Span::new(start, end),
         body: Span::new(from, to),
         depth,
+        aside: false,
     }
 }
 
@@ -87,12 +90,13 @@ pub(super) fn blocks(text: &str, lines: &[Line]) -> Vec<Block> {
                 .all(|c| matches!(c, '-' | '=' | '*' | '_' | '~' | '#'))
             && !words.contains('|');
         let other_depth = first.is_some_and(|f: usize| lines[f].depth != line.depth);
-        if (line.body.is_empty() || other_depth)
+        let none = line.body.is_empty() || line.aside;
+        if (none || other_depth)
             && let Some(f) = first.take()
         {
             found.push(block(lines, f, i));
         }
-        if !line.body.is_empty() && !rule && first.is_none() {
+        if !none && !rule && first.is_none() {
             first = Some(i);
         }
     }

@@ -135,6 +135,49 @@ pub fn direction_at(body: Body, moment: &Moment, station: Option<&Station>) -> (
     (Direction::of_vector(vector), norm(vector))
 }
 
+/// The Moon's direction within 0.5° (from 1900 to 2100), and its mean distance in au: the low-precision formula of the Astronomical Almanac
+/// (page D46, from memory), mean equinox of date brought to the ICRS.
+pub(crate) fn moon_to_half_a_degree(
+    moment: &Moment,
+    station: Option<&Station>,
+) -> (Direction, f64) {
+    const MEAN_AU: f64 = 384_400.0 / AU_KM;
+    let t = ((moment.tt.0 - super::time::J2000) + moment.tt.1) / 36_525.0;
+    let sine = |at: f64, rate: f64| (at + rate * t).to_radians().sin();
+    let longitude = 218.32 + 481_267.881 * t + 6.29 * sine(135.0, 477_198.87)
+        - 1.27 * sine(259.3, -413_335.36)
+        + 0.66 * sine(235.7, 890_534.22)
+        + 0.21 * sine(269.9, 954_397.74)
+        - 0.19 * sine(357.5, 35_999.05)
+        - 0.11 * sine(186.5, 966_404.03);
+    let latitude = 5.13 * sine(93.3, 483_202.02) + 0.28 * sine(228.2, 960_400.89)
+        - 0.28 * sine(318.3, 6003.15)
+        - 0.17 * sine(217.6, -407_332.21);
+    // the obliquity of J2000.0, and precession in longitude alone: good enough for half a degree
+    let (sin_l, cos_l) = (longitude - 1.397 * t).to_radians().sin_cos();
+    let (sin_b, cos_b) = latitude.to_radians().sin_cos();
+    let (sin_e, cos_e) = 23.4393_f64.to_radians().sin_cos();
+    let geocentric = [
+        cos_b * cos_l,
+        cos_e * cos_b * sin_l - sin_e * sin_b,
+        sin_e * cos_b * sin_l + cos_e * sin_b,
+    ];
+    let observer = station.map_or([0.0; 3], |s| s.from_centre_au);
+    let vector: [f64; 3] = std::array::from_fn(|i| MEAN_AU * geocentric[i] - observer[i]);
+    (Direction::of_vector(vector), MEAN_AU)
+}
+
+/// Where a body is to 2′, light-time and the observer left out (the Moon: to 1.6°), for telling that it is far off.
+pub fn roughly(body: Body, moment: &Moment) -> Direction {
+    match body {
+        Body::Moon => moon_to_half_a_degree(moment, None).0,
+        _ => {
+            let (earth, there) = (moment.earth.barycentric[0], barycentric(body, moment, 0.0));
+            Direction::of_vector(std::array::from_fn(|i| there[i] - earth[i]))
+        }
+    }
+}
+
 /// How much of the Moon's disc is lit, 0 to 1, and whether it is waxing (Meeus 1998, ch. 48, geocentric).
 pub fn moon_phase(moment: &Moment) -> (f64, bool) {
     let (moon, moon_au) = direction_at(Body::Moon, moment, None);

@@ -1,93 +1,35 @@
 //! Constellations by the IAU's boundaries of 1875.
 //!
 //! Roman 1987 (PASP 99, 695; CDS VI/42) after Delporte 1930, from the exact integer forms of the table (seconds of time
-//! and of arc). The table, searched from the north, becomes cells of a few bands of declination: one constellation each.
+//! and of arc). The table, searched from the north, is laid out when the program is built as cells of a few bands of
+//! declination: one constellation each.
 
 use super::{Direction, fk4, fk5, rotate};
 use std::sync::LazyLock;
 
-/// One row of the table.
-#[derive(Clone, Copy, Debug)]
-struct Row {
-    from_s: i32,
-    to_s: i32,
-    above_arcsec: i32,
-    abbreviation: &'static str,
+/// The tables as the build script lays them out (`src/sky/data/tables.rs`).
+mod table {
+    include!(concat!(env!("OUT_DIR"), "/constellations.rs"));
 }
+
+pub use self::table::NAMES;
 
 /// A band of declination: from its lower edge up to the next band's.
 struct Band {
     above_arcsec: i32,
     to_arcsec: i32,
-    /// Right ascension (seconds of time) from which each constellation holds.
-    cells: Vec<(i32, &'static str)>,
+    /// Right ascension (seconds of time) from which each constellation (by its place in [`NAMES`]) holds.
+    cells: &'static [(i32, u8)],
 }
 
-/// Every abbreviation, as IAU writes it, with the nominative and the genitive.
-pub static NAMES: LazyLock<Vec<[&'static str; 3]>> = LazyLock::new(|| {
-    include_str!("data/constellation_names.csv")
-        .lines()
-        .skip(1)
-        .filter_map(|line| {
-            let mut parts = line.split(',').map(str::trim);
-            Some([parts.next()?, parts.next()?, parts.next()?])
-        })
-        .collect()
-});
-
-static ROWS: LazyLock<Vec<Row>> = LazyLock::new(|| {
-    include_str!("data/constellation_bounds_b1875.csv")
-        .lines()
-        .skip(1)
-        .filter_map(|line| {
-            let part: Vec<&'static str> = line.split(',').map(str::trim).collect();
-            Some(Row {
-                from_s: part.get(5)?.parse().ok()?,
-                to_s: part.get(6)?.parse().ok()?,
-                above_arcsec: part.get(7)?.parse().ok()?,
-                abbreviation: part.get(4)?,
-            })
-        })
-        .collect()
-});
-
-static BANDS: LazyLock<Vec<Band>> = LazyLock::new(|| {
-    let mut edges: Vec<i32> = ROWS.iter().map(|r| r.above_arcsec).collect();
-    edges.push(-90 * 3600);
-    edges.sort_unstable();
-    edges.dedup();
-    let upper = edges.iter().skip(1).copied().chain([90 * 3600]);
-    edges
-        .iter()
-        .zip(upper)
-        .map(|(&above_arcsec, to_arcsec)| {
-            let rows: Vec<&Row> = ROWS
-                .iter()
-                .filter(|r| r.above_arcsec <= above_arcsec)
-                .collect();
-            let mut starts: Vec<i32> = rows
-                .iter()
-                .flat_map(|r| [r.from_s, r.to_s])
-                .chain([0])
-                .collect();
-            starts.sort_unstable();
-            starts.dedup();
-            let mut cells: Vec<(i32, &'static str)> = Vec::new();
-            for start in starts.into_iter().filter(|&s| s < 86_400) {
-                let first = rows.iter().find(|r| r.from_s <= start && start < r.to_s);
-                let name = first.map_or("Oct", |r| r.abbreviation);
-                if cells.last().is_none_or(|c| c.1 != name) {
-                    cells.push((start, name));
-                }
-            }
-            Band {
-                above_arcsec,
-                to_arcsec,
-                cells,
-            }
-        })
-        .collect()
-});
+fn band(index: usize) -> Band {
+    let [from, to] = [0, 1].map(|k| usize::from(table::BAND_STARTS[index + k]));
+    Band {
+        above_arcsec: table::EDGES_ARCSEC[index],
+        to_arcsec: table::EDGES_ARCSEC[index + 1],
+        cells: &table::CELLS[from..to],
+    }
+}
 
 /// ICRS to the mean equator and equinox of B1875.0 without E-terms: to FK5 and FK4 as at B1950.0, Newcomb's precession.
 static TO_B1875: LazyLock<[[f64; 3]; 3]> = LazyLock::new(|| {
@@ -125,25 +67,27 @@ pub fn at(icrs: Direction) -> &'static str {
 /// The constellation of a B1875.0 place: right ascension in seconds of time [0, 86400), declination in arcsec. A place on
 /// a boundary belongs to the side east or north of it.
 pub fn at_b1875(ra_s: f64, dec_arcsec: f64) -> &'static str {
-    let band = BANDS.partition_point(|b| f64::from(b.above_arcsec) <= dec_arcsec);
-    let Some(band) = BANDS.get(band.saturating_sub(1)) else {
-        return "Oct";
-    };
-    let cell = band.cells.partition_point(|c| f64::from(c.0) <= ra_s);
-    band.cells
-        .get(cell.saturating_sub(1))
-        .map_or("Oct", |c| c.1)
+    // the last edge is the pole, and no band begins there
+    let lower = &table::EDGES_ARCSEC[..table::EDGES_ARCSEC.len() - 1];
+    let at = lower.partition_point(|&edge| f64::from(edge) <= dec_arcsec);
+    let cells = band(at.saturating_sub(1)).cells;
+    let cell = cells.partition_point(|c| f64::from(c.0) <= ra_s);
+    NAMES[usize::from(cells[cell.saturating_sub(1)].1)][0]
 }
 
 /// How far a direction is from the nearest boundary of the named constellation, degrees; 0 inside; 180 for no such name.
 pub fn distance_deg(icrs: Direction, abbreviation: &str) -> f64 {
-    let place = at_1875(icrs);
     let mut nearest: f64 = 180.0;
-    for band in BANDS.iter() {
+    let named = |names: &[&str; 3]| names[0].eq_ignore_ascii_case(abbreviation);
+    let Some(wanted) = NAMES.iter().position(named) else {
+        return nearest;
+    };
+    let place = at_1875(icrs);
+    for band in (0..table::BAND_STARTS.len() - 1).map(band) {
         for (i, &(from_s, name)) in band.cells.iter().enumerate() {
-            if name.eq_ignore_ascii_case(abbreviation) {
+            if usize::from(name) == wanted {
                 let to_s = band.cells.get(i + 1).map_or(86_400, |c| c.0);
-                nearest = nearest.min(to_cell(place, band, from_s, to_s));
+                nearest = nearest.min(to_cell(place, &band, from_s, to_s));
             }
         }
     }

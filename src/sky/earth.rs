@@ -1,13 +1,14 @@
 //! Where the Earth and the Sun are, and how fast the Earth moves.
 //!
-//! 1900 to 2100: ERFA `epv00` (VSOP2000; 13 km and 4 mm/s at worst against DE405). 1600 to 2400, where sofars gives
-//! nothing: the same series, as ERFA itself goes on with it. Farther off: the Earth–Moon barycentre of `plan94` (Simon et
+//! 1600 to 2400: the series of ERFA `epv00` (VSOP2000; from 1900 to 2100 13 km and 4 mm/s at worst against DE405), its
+//! terms summed several at once. Farther off: the Earth–Moon barycentre of `plan94` (Simon et
 //! al. 1994) less the Moon of `moon98`, and the Sun about the barycentre from the four giant planets; the aberration is
 //! then off by some mas.
 
+use super::series::{BLOCK, sin_cos};
 use super::time::J2000;
-use sofars::eph::{epv00, moon98, plan94};
-use std::sync::LazyLock;
+use sofars::eph::{moon98, plan94};
+use std::f64::consts::TAU;
 
 /// Position and velocity, au and au/day, BCRS axes.
 pub type PosVel = [[f64; 3]; 2];
@@ -36,57 +37,40 @@ const GIANTS: [(i32, f64); 4] = [(5, 1047.355), (6, 3498.5), (7, 22_869.0), (8, 
 /// The Earth at a TDB (or TT) instant.
 pub fn at(tdb: (f64, f64)) -> Earth {
     let years = ((tdb.0 - J2000) + tdb.1) / 365.25;
-    match epv00(tdb.0, tdb.1) {
-        Some((heliocentric, barycentric)) => Earth {
-            heliocentric,
-            barycentric,
-        },
-        None if years.abs() <= 400.0 => by_series(years),
-        None => outside(tdb),
+    if years.abs() <= 400.0 {
+        by_series(years, usize::MAX)
+    } else {
+        outside(tdb)
     }
 }
 
-/// One term: amplitude (au), phase (radians), frequency (radians a Julian year).
-type Term = [f64; 3];
-
-/// The terms by origin (Sun to Earth, barycentre to Sun), power of the time and axis.
-static SERIES: LazyLock<[[[Vec<Term>; 3]; 3]; 2]> = LazyLock::new(|| {
-    let mut series: [[[Vec<Term>; 3]; 3]; 2] = Default::default();
-    for line in include_str!("data/earth_vsop2000.csv").lines().skip(1) {
-        let mut parts = line.split(',');
-        let name = parts.next().unwrap_or("").as_bytes();
-        let mut number = || parts.next().and_then(|p| p.parse::<f64>().ok());
-        let (&[origin, power, axis], Some(a), Some(b), Some(c)) =
-            (name, number(), number(), number())
-        else {
-            continue;
-        };
-        let index = (
-            usize::from(origin == b's'),
-            usize::from(power - b'0'),
-            usize::from(axis - b'x'),
-        );
-        series[index.0][index.1][index.2].push([a, b, c]);
+/// The Earth within 2e-5 au, 4e-6 of it its speed, at a TDB (or TT) instant: by the largest 32 terms of each series.
+pub fn quick(tdb: (f64, f64)) -> Earth {
+    let years = ((tdb.0 - J2000) + tdb.1) / 365.25;
+    if years.abs() <= 400.0 {
+        by_series(years, 32 / BLOCK)
+    } else {
+        outside(tdb)
     }
-    series
-});
+}
 
-/// The series of `epv00` at a time in Julian years from J2000.0.
-fn by_series(t: f64) -> Earth {
+/// The series as the build script lays them out (`src/sky/data/tables.rs`): `TERMS` in blocks of amplitudes (au), phases
+/// (turns) and rates (turns a Julian year), and at which block each series begins, by origin (Sun to Earth, barycentre to
+/// Sun), power of the time and axis.
+mod table {
+    include!(concat!(env!("OUT_DIR"), "/earth.rs"));
+}
+
+/// The series of `epv00` at a time in Julian years from J2000.0, of each at most so many blocks.
+fn by_series(t: f64, blocks: usize) -> Earth {
     let [from_sun, from_centre] = [0, 1].map(|origin| {
         let mut pv: PosVel = [[0.0; 3]; 2];
-        for (power, axes) in SERIES[origin].iter().enumerate() {
-            let (whole, less) = match power {
-                0 => (1.0, 0.0),
-                1 => (t, 1.0),
-                _ => (t * t, 2.0 * t),
-            };
-            for (axis, terms) in axes.iter().enumerate() {
-                for &[a, b, c] in terms {
-                    let (sin, cos) = (b + c * t).sin_cos();
-                    pv[0][axis] += a * whole * cos;
-                    pv[1][axis] += a * (less * cos - whole * c * sin) / 365.25;
-                }
+        let powers = [(1.0, 0.0), (t, 1.0), (t * t, 2.0 * t)];
+        for (power, (whole, less)) in powers.into_iter().enumerate() {
+            for axis in 0..3 {
+                let (cos, sin) = sums(origin * 9 + power * 3 + axis, blocks, t);
+                pv[0][axis] += whole * cos;
+                pv[1][axis] += (less * cos - whole * sin) / 365.25;
             }
         }
         pv
@@ -95,6 +79,24 @@ fn by_series(t: f64) -> Earth {
         heliocentric: from_sun.map(to_bcrs),
         barycentric: combine(from_sun, from_centre, 1.0).map(to_bcrs),
     }
+}
+
+/// The sums of the cosines of a series, and of its sines times their rates (a year).
+fn sums(series: usize, blocks: usize, t: f64) -> (f64, f64) {
+    let mut sum = (0.0, 0.0);
+    let terms = &table::TERMS[table::STARTS[series]..table::STARTS[series + 1]];
+    // the largest terms come first: summed from the end
+    for [amplitude, phase, rate] in terms[..blocks.min(terms.len())].iter().rev() {
+        let (mut cosines, mut sines) = ([0.0; BLOCK], [0.0; BLOCK]);
+        for i in 0..BLOCK {
+            let (sin, cos) = sin_cos(phase[i] + rate[i] * t);
+            cosines[i] = amplitude[i] * cos;
+            sines[i] = amplitude[i] * rate[i] * sin;
+        }
+        sum.0 += cosines.iter().sum::<f64>();
+        sum.1 += sines.iter().sum::<f64>();
+    }
+    (sum.0, sum.1 * TAU)
 }
 
 /// From the ecliptic of the series to BCRS axes (the matrix of ERFA `epv00`, fitted to DE405).

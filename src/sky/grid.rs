@@ -6,8 +6,10 @@
 //! [`super::moment::Moment`] costs, an isolated instant six of them: for runs of many instants only.
 
 use super::earth::{self, Earth};
+use super::nutation;
 use super::time::J2000;
-use sofars::pnp::{bpn2xy, eors, pnm06a, s06};
+use sofars::erst::{era00, gmst06};
+use sofars::pnp::{bpn2xy, eors, fw2m, pfw06, s06};
 use std::sync::OnceLock;
 
 /// What is slow to compute of an instant.
@@ -23,12 +25,25 @@ pub struct Slow {
 
 /// The slow part computed directly at a TT instant.
 pub fn direct(tt: (f64, f64)) -> Slow {
-    let matrix = pnm06a(tt.0, tt.1);
+    let matrix = nutation::matrix(tt);
     let (x, y) = bpn2xy(&matrix);
     Slow {
         matrix,
         equation_of_origins_rad: eors(&matrix, s06(tt.0, tt.1, x, y)),
         earth: earth::at(tt),
+    }
+}
+
+/// Near enough for trying many instants: the largest terms of nutation and of the Earth's motion.
+pub fn quick(tt: (f64, f64)) -> Slow {
+    let (gamma, phi, psi, epsilon) = pfw06(tt.0, tt.1);
+    let (d_psi, d_epsilon) = nutation::largest(tt);
+    // the origins without the equinoxes' complementary terms (3 mas): ERA − GMST − Δψ cos ε
+    let polynomial = era00(tt.0, tt.1) - gmst06(tt.0, tt.1, tt.0, tt.1);
+    Slow {
+        matrix: fw2m(gamma, phi, psi + d_psi, epsilon + d_epsilon),
+        equation_of_origins_rad: polynomial - d_psi * epsilon.cos(),
+        earth: earth::quick(tt),
     }
 }
 

@@ -1,7 +1,8 @@
 //! Where a direction stands over a site's horizon, and when it is up.
 
+use super::bodies::{Body, roughly};
 use super::moment::{Air, Moment, Station};
-use super::{Direction, Ground, half_turn_deg, time};
+use super::{Direction, Ground, half_turn_deg, time, turn_deg};
 
 /// Topocentric airless place.
 #[derive(Clone, Copy, PartialEq, Debug)]
@@ -26,6 +27,86 @@ pub fn place_at(icrs: Direction, station: &Station) -> AltAz {
         altitude_deg: seen.altitude_deg,
         azimuth_deg: seen.azimuth_deg,
         hour_angle_h: seen.hour_angle_deg / 15.0,
+    }
+}
+
+/// A direction's way over a site within a day or two of an instant, to 5″ a day (15″ more across a leap second): what
+/// changes slowly (precession, nutation, aberration) is held, and the Earth turns.
+#[derive(Clone, Copy, Debug)]
+pub struct Course {
+    /// Apparent place at the instant, degrees, and its changes over the span: linear and quadratic.
+    ra_deg: [f64; 3],
+    dec_deg: [f64; 3],
+    span_s: f64,
+    sidereal_deg: f64,
+    sin_phi: f64,
+    cos_phi: f64,
+    parallax_deg: f64,
+}
+
+impl Course {
+    /// Of an ICRS direction that does not move.
+    pub fn of_star(icrs: Direction, station: &Station) -> Course {
+        let apparent = station.moment.apparent(icrs);
+        Course::through([apparent; 3], 1.0, 0.0, station)
+    }
+
+    /// Of the Sun, to 10″ within a span of at most two days before and after the instant.
+    pub fn of_sun(station: &Station, span_s: f64) -> Course {
+        let sun = |seconds: f64| {
+            let moment = Moment::quick(time::add_seconds(station.moment.utc, seconds));
+            moment.apparent(roughly(Body::Sun, &moment))
+        };
+        // 8.794″ at the mean distance
+        let parallax_deg = 8.794 / 3600.0;
+        Course::through(
+            [sun(-span_s), sun(0.0), sun(span_s)],
+            span_s,
+            parallax_deg,
+            station,
+        )
+    }
+
+    /// Through three apparent places, a span before, at, and a span after the instant.
+    fn through(
+        [before, at, after]: [Direction; 3],
+        span_s: f64,
+        parallax_deg: f64,
+        station: &Station,
+    ) -> Course {
+        let curve = |before: f64, after: f64| [(after - before) / 2.0, (after + before) / 2.0];
+        let turn = |other: Direction| half_turn_deg(other.ra_deg - at.ra_deg);
+        let [ra_1, ra_2] = curve(turn(before), turn(after));
+        let [dec_1, dec_2] = curve(before.dec_deg - at.dec_deg, after.dec_deg - at.dec_deg);
+        let (sin_phi, cos_phi) = station.ground.latitude_deg.to_radians().sin_cos();
+        Course {
+            ra_deg: [at.ra_deg, ra_1, ra_2],
+            dec_deg: [at.dec_deg, dec_1, dec_2],
+            span_s,
+            sidereal_deg: station.sidereal_time_rad.to_degrees(),
+            sin_phi,
+            cos_phi,
+            parallax_deg,
+        }
+    }
+
+    /// Airless altitude, azimuth and hour angle some seconds after the instant.
+    pub fn after(&self, seconds: f64) -> AltAz {
+        let x = seconds / self.span_s;
+        let along = |[at, linear, quadratic]: [f64; 3]| at + (linear + quadratic * x) * x;
+        let sidereal_deg = self.sidereal_deg + seconds * TURN_DEG_PER_S;
+        let hour_angle_deg = half_turn_deg(sidereal_deg - along(self.ra_deg));
+        let (sin_h, cos_h) = hour_angle_deg.to_radians().sin_cos();
+        let (sin_dec, cos_dec) = along(self.dec_deg).to_radians().sin_cos();
+        let up = self.sin_phi * sin_dec + self.cos_phi * cos_dec * cos_h;
+        let north = self.cos_phi * sin_dec - self.sin_phi * cos_dec * cos_h;
+        let west = cos_dec * sin_h;
+        let altitude = up.atan2(north.hypot(west));
+        AltAz {
+            altitude_deg: altitude.to_degrees() - self.parallax_deg * altitude.cos(),
+            azimuth_deg: turn_deg((-west).atan2(north).to_degrees()),
+            hour_angle_h: hour_angle_deg / 15.0,
+        }
     }
 }
 

@@ -6,6 +6,7 @@
 //!
 //! A system is a file with both ways in it, `to_icrs` and `from_icrs`; a new one is a file beside these and a line here.
 
+pub mod almanac;
 pub mod apparent;
 pub mod bodies;
 pub mod catalogue;
@@ -23,6 +24,8 @@ pub mod hour_angle;
 pub mod icrs;
 pub mod mean;
 pub mod moment;
+pub mod nutation;
+mod series;
 pub mod time;
 
 use sofars::vm;

@@ -4,8 +4,6 @@
 //! gone, where a day that ends in a leap second is 86,401 s long. Before 1972 UTC is taken as UT1, and TT follows from
 //! Delta T. UT1 is UTC (at most 0.9 s off since 1972), unless a caller has a better value.
 
-use std::sync::LazyLock;
-
 /// Julian date of the zero of the modified Julian date.
 pub const MJD_ZERO: f64 = 2_400_000.5;
 /// J2000.0 (2000 January 1.5 TT) as a Julian date.
@@ -63,28 +61,13 @@ pub enum TimeError {
     NotFinite,
 }
 
-/// MJD from which each TAI − UTC holds, whole seconds, from 1972 on.
-static LEAPS: LazyLock<Vec<(i64, f64)>> = LazyLock::new(|| {
-    rows(include_str!("data/tai_minus_utc.csv"))
-        .filter_map(|r| Some((r.get(1)?.parse().ok()?, r.get(2)?.parse().ok()?)))
-        .filter(|&(mjd, _): &(i64, f64)| mjd >= LEAP_ERA)
-        .collect()
-});
-
-/// TT − UT1 at 0h of January 1 of each year, seconds: (first year, values).
-static DELTA_T: LazyLock<(i32, Vec<f64>)> = LazyLock::new(|| {
-    let table: Vec<(i32, f64)> = rows(include_str!("data/delta_t.csv"))
-        .filter_map(|r| Some((r.first()?.parse().ok()?, r.get(1)?.parse().ok()?)))
-        .collect();
-    (
-        table.first().map_or(1800, |r| r.0),
-        table.into_iter().map(|r| r.1).collect(),
-    )
-});
-
-fn rows(csv: &'static str) -> impl Iterator<Item = Vec<&'static str>> {
-    csv.lines().skip(1).map(|line| line.split(',').collect())
+/// The tables as the build script lays them out (`src/sky/data/tables.rs`): `LEAPS`, the MJD from which each TAI − UTC
+/// holds, whole seconds, from 1972 on; `DELTA_T`, TT − UT1 at 0h of January 1 of each year from `DELTA_T_FROM`, seconds.
+mod table {
+    include!(concat!(env!("OUT_DIR"), "/time.rs"));
 }
+
+use self::table::{DELTA_T, DELTA_T_FROM, LEAPS};
 
 // ---------------------------------------------------------------------------------------------- calendar
 
@@ -332,7 +315,7 @@ fn shift(jd: (f64, f64), seconds: f64) -> (f64, f64) {
 /// Good to 1 s in the table, to some 10 s in 1600, and no better than 20 s in 2150.
 pub fn delta_t_s(jd: f64) -> f64 {
     let year = 2000.0 + (jd - 2_451_544.5) / 365.25;
-    let (first, table) = (f64::from(DELTA_T.0), &DELTA_T.1);
+    let (first, table) = (f64::from(DELTA_T_FROM), &DELTA_T);
     let parabola = |y: f64| -20.0 + 32.0 * ((y - 1820.0) / 100.0).powi(2);
     let last = first + (table.len().max(1) - 1) as f64;
     let value_at = |y: f64| {

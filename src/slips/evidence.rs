@@ -3,7 +3,7 @@
 use super::readings::Reading;
 use crate::report::{HorizonQuantity, Meant};
 use crate::rules::Case;
-use crate::rules::identity::{here, named};
+use crate::rules::identity::here;
 use crate::rules::words::{self, apart, rough};
 use crate::sky::horizon::refraction_deg;
 use crate::sky::separation_deg;
@@ -22,7 +22,7 @@ pub fn weigh(case: &Case, sister: Option<(f64, usize)>) -> Facts {
     let mut likelihood = 1.0;
     let mut said: Vec<String> = Vec::new();
     let step = case.meant.reduced.map_or(1.0, |r| r.step_arcsec);
-    if let (Some(known), Some(icrs)) = (named(case.report, case.house), here(case.meant))
+    if let (Some(known), Some(icrs)) = (case.named, here(case.meant))
         && let Some(expected) = known.expected(case)
     {
         let distance = separation_deg(icrs, expected.icrs) * 3600.0;

@@ -12,7 +12,9 @@ mod readings;
 mod sieve;
 
 use crate::report::{Becomes, Finding, Frame, Meant, Slip};
+use crate::rules::identity::Known;
 use crate::rules::{Case, Sisters, of_place_and_time};
+use crate::sky::almanac::Almanac;
 use readings::{Changes, Reading};
 
 /// At most so many are offered.
@@ -31,30 +33,32 @@ struct Kept {
 /// What probably happened to a report with a query or reject about where or when, best first, at most five; none where no
 /// slip explains it. `to` is the frame that readings are restated in, `sisters` the word of the object's other reports.
 pub(crate) fn explain(case: &Case, to: Frame, sisters: Option<&Sisters>) -> Vec<Slip> {
-    let trial = Case { text: "", ..*case };
-    let broken = of_place_and_time(&trial);
+    let broken = of_place_and_time(&Case { text: "", ..*case });
     let outlying =
         sisters.is_some_and(|s| matches!(s.agrees(case.report, case.meant), Some((false, _))));
     if broken.is_empty() && !outlying && case.meant.read.is_some() {
         return Vec::new();
     }
+    // readings are tried by quick instants; a body's own place is asked to the arcsecond
+    let quick = Almanac::quick();
+    let almanac = match case.named {
+        Some(Known::Body(_)) => case.almanac,
+        _ => &quick,
+    };
+    let case = &Case { almanac, ..*case };
     let sieve = sieve::Sieve::new(case, sisters);
     let mut kept = Vec::new();
     let step = case.meant.reduced.map_or(0.0, |r| r.step_arcsec);
     let still = outlying && sisters.is_some_and(|s| !s.move_beyond(step));
-    let singles = singles(case, &broken, outlying, still);
+    let singles = singles(case, &broken, outlying, still, &sieve);
     for reading in &singles {
-        if sieve.passes(reading)
-            && let Some(reading) = hold(case, vec![reading.kind], reading, sisters)
-        {
+        if let Some(reading) = hold(case, vec![reading.kind], reading, sisters) {
             kept.push(reading);
         }
     }
     if kept.is_empty() {
         for (kinds, reading) in pairs(case, &broken, outlying) {
-            if sieve.passes(&reading)
-                && let Some(reading) = hold(case, kinds, &reading, sisters)
-            {
+            if let Some(reading) = hold(case, kinds, &reading, sisters) {
                 kept.push(reading);
             }
         }
@@ -63,7 +67,13 @@ pub(crate) fn explain(case: &Case, to: Frame, sisters: Option<&Sisters>) -> Vec<
 }
 
 /// Single readings of the kinds that can mend what is broken: another time does not move a star into its constellation.
-fn singles(case: &Case, broken: &[Finding], outlying: bool, still: bool) -> Vec<Reading> {
+fn singles(
+    case: &Case,
+    broken: &[Finding],
+    outlying: bool,
+    still: bool,
+    sieve: &sieve::Sieve,
+) -> Vec<Reading> {
     let can = |changes: Changes| {
         broken.iter().all(|f| mends(changes, f.rule))
             && !(outlying && changes == Changes::Site)
@@ -77,7 +87,7 @@ fn singles(case: &Case, broken: &[Finding], outlying: bool, still: bool) -> Vec<
         list.extend(readings::of_site(case));
     }
     if can(Changes::Place) {
-        list.extend(readings::of_place(case));
+        list.extend(readings::of_place(case, |position| sieve.passes(position)));
     }
     list
 }
@@ -108,8 +118,9 @@ fn pairs(case: &Case, broken: &[Finding], outlying: bool) -> Vec<(Vec<&'static s
     let mut list = Vec::new();
     let mut firsts = readings::of_time(case);
     firsts.extend(readings::of_site(case));
-    let common_places = |r: &Reading| !matches!(r.kind, "digit-miskeyed" | "digits-exchanged");
-    firsts.extend(readings::of_place(case).into_iter().filter(common_places));
+    // no pairs with a changed digit: hundreds of them fit anything
+    let of_place = |case: &Case| readings::of_place(case, |_| false);
+    firsts.extend(of_place(case));
     for (k, first) in firsts.iter().enumerate() {
         let meant = case.mean(&first.report);
         let changed = Case {
@@ -118,15 +129,15 @@ fn pairs(case: &Case, broken: &[Finding], outlying: bool) -> Vec<(Vec<&'static s
             ..*case
         };
         let seconds = match first.changes {
-            Changes::Time => [readings::of_site(&changed), readings::of_place(&changed)].concat(),
-            Changes::Site => [readings::of_site(&changed), readings::of_place(&changed)].concat(),
+            Changes::Time => [readings::of_site(&changed), of_place(&changed)].concat(),
+            Changes::Site => [readings::of_site(&changed), of_place(&changed)].concat(),
             Changes::Place => Vec::new(),
         };
         let seconds = seconds.into_iter().chain(match first.changes {
             Changes::Time => readings::of_time(&changed),
             _ => Vec::new(),
         });
-        for second in seconds.filter(common_places) {
+        for second in seconds {
             // each pair once, and no slip twice
             if second.kind == first.kind
                 || firsts[..k]

@@ -36,20 +36,16 @@ pub struct Reading {
     pub words: String,
 }
 
-/// All single readings of position and equinox.
-pub fn of_place(case: &Case) -> Vec<Reading> {
+/// All single readings of position and equinox; of changed digits those that pass a quick look.
+pub fn of_place(case: &Case, passes: impl Fn(&Position) -> bool) -> Vec<Reading> {
     let mut list = Vec::new();
     dec_sign(case.report, &mut list);
     ra_unit(case.report, &mut list);
     ra_dec_exchanged(case.report, &mut list);
     equinox_other(case, &mut list);
     hour_angle_for_ra(case.report, &mut list);
-    let mut at = list.len();
-    changed_digits(case.report, "digits-exchanged", &mut list);
-    share(&mut list[at..]);
-    at = list.len();
-    changed_digits(case.report, "digit-miskeyed", &mut list);
-    share(&mut list[at..]);
+    changed_digits(case.report, "digits-exchanged", &passes, &mut list);
+    changed_digits(case.report, "digit-miskeyed", &passes, &mut list);
     list
 }
 
@@ -281,53 +277,64 @@ fn hour_angle_for_ra(report: &Report, list: &mut Vec<Reading>) {
     ));
 }
 
-/// Digits of a coordinate exchanged or miskeyed, with priors by what the digit counts; the caller shares them out.
-fn changed_digits(report: &Report, kind: &'static str, list: &mut Vec<Reading>) {
-    let position = &report.position;
-    let hours = position.kind != PositionKind::Horizontal
-        && angles::first_unit(position) == Some(AngleUnit::Hours);
+/// Digits of a coordinate exchanged or miskeyed, with priors by what the digit counts, that add up to the kind's own over
+/// all of them, those that do not pass too: only what passes is made.
+fn changed_digits(
+    report: &Report,
+    kind: &'static str,
+    passes: &impl Fn(&Position) -> bool,
+    list: &mut Vec<Reading>,
+) {
+    let hours = report.position.kind != PositionKind::Horizontal
+        && angles::first_unit(&report.position) == Some(AngleUnit::Hours);
+    let (at, mut sum) = (list.len(), 0.0);
     for axis in 0..2 {
         let Some(angle) = (if axis == 0 {
-            position.first
+            report.position.first
         } else {
-            position.second
+            report.position.second
         }) else {
             continue;
         };
-        let changes: Box<dyn Iterator<Item = digits::Changed>> = if kind == "digits-exchanged" {
-            Box::new(digits::exchanged(&angle))
-        } else {
-            Box::new(digits::miskeyed(&angle))
-        };
         let in_hours = axis == 0 && hours;
-        for changed in changes {
+        let most = match (axis, in_hours) {
+            (1, _) => 90.0,
+            (_, true) => 24.0,
+            (_, false) => 360.0,
+        };
+        let mut position = report.position.clone();
+        let mut look = |changed: digits::Changed| {
             let value = changed.angle.value().abs();
-            let most = match (axis, in_hours) {
-                (1, _) => 90.0,
-                (_, true) => 24.0,
-                (_, false) => 360.0,
-            };
             if value > most || (axis == 0 && value >= most) {
-                continue;
+                return;
+            }
+            let prior = likelihood(&changed, axis, in_hours);
+            sum += prior;
+            if axis == 0 {
+                position.first = Some(changed.angle);
+            } else {
+                position.second = Some(changed.angle);
+            }
+            if !passes(&position) {
+                return;
             }
             let mut other = report.clone();
-            if axis == 0 {
-                other.position.first = Some(changed.angle);
-            } else {
-                other.position.second = Some(changed.angle);
-            }
+            other.position = position.clone();
             let words = format!(
                 "{} read as {}",
                 words::angle(&angle, in_hours),
                 words::angle(&changed.angle, in_hours)
             );
-            list.push(place(
-                kind,
-                likelihood(&changed, axis, in_hours),
-                other,
-                words,
-            ));
+            list.push(place(kind, prior, other, words));
+        };
+        if kind == "digits-exchanged" {
+            digits::exchanged(&angle).for_each(&mut look);
+        } else {
+            digits::miskeyed(&angle).for_each(&mut look);
         }
+    }
+    for reading in &mut list[at..] {
+        reading.prior *= priors().of(kind) / f64::max(sum, 1e-12);
     }
 }
 

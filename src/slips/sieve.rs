@@ -3,9 +3,7 @@
 //! It works with differences from what the report as written came to, is lenient, and decides nothing: what passes is held
 //! to all the facts.
 
-use super::readings::{Changes, Reading};
-use crate::report::{AngleUnit, Equinox, HorizonQuantity, Meant, PositionKind, System};
-use crate::rules::identity::named;
+use crate::report::{AngleUnit, Equinox, HorizonQuantity, Meant, Position, PositionKind, System};
 use crate::rules::{Case, Sisters, angles};
 use crate::sky::{Direction, separation_deg};
 
@@ -47,13 +45,11 @@ impl<'a> Sieve<'a> {
                 _ => None,
             })
             .collect();
-        let object = named(case.report, case.house)
-            .and_then(|known| known.expected(case))
-            .map(|e| {
-                let reach = e.radius_arcsec.max(120.0) + 2.0 * e.slack_arcsec + 600.0;
-                let step = meant.reduced.map_or(0.0, |r| 3.0 * r.step_arcsec);
-                (e.icrs, (reach + step) / 3600.0 + slack(on_icrs))
-            });
+        let object = case.named.and_then(|known| known.expected(case)).map(|e| {
+            let reach = e.radius_arcsec.max(120.0) + 2.0 * e.slack_arcsec + 600.0;
+            let step = meant.reduced.map_or(0.0, |r| 3.0 * r.step_arcsec);
+            (e.icrs, (reach + step) / 3600.0 + slack(on_icrs))
+        });
         Sieve {
             case: *case,
             sisters,
@@ -72,14 +68,10 @@ impl<'a> Sieve<'a> {
         }
     }
 
-    /// Could this reading fit? Only readings that change a digit are looked at: there are hundreds of them.
-    pub fn passes(&self, reading: &Reading) -> bool {
-        let digits = matches!(reading.kind, "digit-miskeyed" | "digits-exchanged");
-        if !self.useful || !digits || reading.changes != Changes::Place {
-            return true;
-        }
-        let position = &reading.report.position;
-        let (Some(first), Some(second)) = (position.first, position.second) else {
+    /// Could this position with a changed digit fit? Only these are looked at: there are hundreds of them.
+    pub fn passes(&self, position: &Position) -> bool {
+        let (true, Some(first), Some(second)) = (self.useful, position.first, position.second)
+        else {
             return true;
         };
         let scale = if angles::first_unit(position) == Some(AngleUnit::Hours) {

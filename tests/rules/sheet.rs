@@ -64,6 +64,7 @@ fn report(text: &str, start: usize, end: usize) -> Option<Report> {
                 magnitude: None,
                 uncertainty_arcsec: None,
                 claims_new: None,
+                mentions: Vec::new(),
                 stets: Vec::new(),
                 block,
             });

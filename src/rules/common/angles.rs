@@ -134,7 +134,7 @@ pub fn gap(a: &Meant, b: &Meant) -> Option<Gap> {
 impl Case<'_> {
     /// What a changed report would mean under the same house rules.
     pub fn mean(&self, report: &Report) -> Meant {
-        crate::reduction::mean(report, self.house, self.house.canonical)
+        crate::reduction::mean_by(report, self.house, self.house.canonical, self.almanac)
     }
 
     /// How many rules of place and time a changed report would break, query or heavier.

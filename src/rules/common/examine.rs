@@ -2,7 +2,9 @@
 
 use crate::house::House;
 use crate::report::{Examined, Finding, Frame, Meant, Report, Weight};
+use crate::rules::identity::named;
 use crate::rules::{Case, Findings, Rule, TABLE};
+use crate::sky::almanac::Almanac;
 
 /// Which rules are asked: `--only` and `--except`.
 #[derive(Clone, PartialEq, Eq, Debug, Default)]
@@ -84,9 +86,64 @@ pub fn of_place_and_time(case: &Case) -> Vec<Finding> {
     findings
 }
 
-/// Runs every rule over a report, lets the editor's word count, and says what probably happened.
-///
-/// `now_utc` is what counts as now, `text` the sheet's text. Findings come in the order of the sheet.
+/// What reports are examined with: all that is the same for each report of a sheet.
+#[derive(Clone, Copy)]
+pub struct Desk<'a> {
+    /// The house rules.
+    pub house: &'a House,
+    /// The frame that positions are restated in.
+    pub to: Frame,
+    /// What counts as now: UTC as a two-part Julian date.
+    pub now_utc: (f64, f64),
+    /// The sheet's text.
+    pub text: &'a str,
+    /// Which rules are asked.
+    pub selection: &'a Selection,
+    /// Where instants and sites come from.
+    pub almanac: &'a Almanac,
+}
+
+impl<'a> Desk<'a> {
+    /// A report of the sheet as a case for the rules.
+    pub fn case(&self, report: &'a Report, meant: &'a Meant) -> Case<'a> {
+        Case {
+            report,
+            meant,
+            house: self.house,
+            now_utc: self.now_utc,
+            almanac: self.almanac,
+            named: named(report, self.house),
+            text: self.text,
+        }
+    }
+
+    /// Runs every rule over a report, lets the editor's word count, and says what probably happened. Findings come in the
+    /// order of the sheet.
+    pub fn examine(&self, report: Report, meant: Meant) -> Examined {
+        let desk: Desk = *self;
+        let case = desk.case(&report, &meant);
+        let mut findings = Vec::new();
+        for rule in TABLE {
+            findings.extend(run(rule, &case, self.selection));
+        }
+        let gave_way = one_cause_one_finding(&mut findings);
+        super::super::stet_idle::apply(&case, self.selection, &mut findings, &gave_way);
+        sort(&mut findings);
+        let slips = if needs_explaining(&findings) {
+            crate::slips::explain(&case, self.to, None)
+        } else {
+            Vec::new()
+        };
+        Examined {
+            report,
+            meant,
+            findings,
+            slips,
+        }
+    }
+}
+
+/// The same for a single report: `now_utc` is what counts as now, `text` the sheet's text.
 pub fn examine(
     report: Report,
     meant: Meant,
@@ -96,31 +153,15 @@ pub fn examine(
     text: &str,
     selection: &Selection,
 ) -> Examined {
-    let case = Case {
-        report: &report,
-        meant: &meant,
+    Desk {
         house,
+        to,
         now_utc,
         text,
-    };
-    let mut findings = Vec::new();
-    for rule in TABLE {
-        findings.extend(run(rule, &case, selection));
+        selection,
+        almanac: &Almanac::new(),
     }
-    let gave_way = one_cause_one_finding(&mut findings);
-    super::super::stet_idle::apply(&case, selection, &mut findings, &gave_way);
-    sort(&mut findings);
-    let slips = if needs_explaining(&findings) {
-        crate::slips::explain(&case, to, None)
-    } else {
-        Vec::new()
-    };
-    Examined {
-        report,
-        meant,
-        findings,
-        slips,
-    }
+    .examine(report, meant)
 }
 
 /// Puts findings in the order of the sheet, the heaviest first at one place.

@@ -1,9 +1,9 @@
 //! Who is named: a planet, the Moon, the Sun, an object of the catalogue or of the house's own lists; and where it is.
 
 use crate::house::{House, KnownObject};
-use crate::report::{Meant, Report};
+use crate::report::{InstantMeant, Meant, Report};
 use crate::rules::Case;
-use crate::sky::bodies::{self, Body};
+use crate::sky::bodies::Body;
 use crate::sky::catalogue::{self, Entry};
 use crate::sky::{Direction, Ground, separation_deg};
 
@@ -111,6 +111,16 @@ pub fn ground(meant: &Meant) -> Option<Ground> {
     })
 }
 
+/// Seconds from an instant, which is its beginning as written, to the fairest single guess at the true one: the middle of
+/// its step for a date alone.
+pub fn middle_s(instant: &InstantMeant) -> f64 {
+    if instant.step_s >= 3600.0 {
+        instant.step_s / 2.0
+    } else {
+        0.0
+    }
+}
+
 /// The Julian year of a two-part Julian date.
 pub fn julian_year(utc: (f64, f64)) -> f64 {
     2000.0 + ((utc.0 - 2_451_545.0) + utc.1) / 365.25
@@ -154,13 +164,9 @@ impl Known<'_> {
             Known::Body(body) => {
                 let instant = case.meant.instant?;
                 let ground = ground(case.meant);
-                // an instant is its beginning as written: the middle of its step is the fairest single guess for a date alone
-                let middle = if instant.step_s >= 3600.0 {
-                    instant.step_s / 2.0
-                } else {
-                    0.0
-                };
-                let place = bodies::place(*body, super::words::later(instant.utc, middle), ground);
+                let middle = middle_s(&instant);
+                let at = super::words::later(instant.utc, middle);
+                let place = case.almanac.view(at, ground).place(*body);
                 let light_time_s = if instant.heliocentric { 500.0 } else { 0.0 };
                 let motion =
                     place.motion_arcsec_per_h * (instant.step_s - middle + light_time_s) / 3600.0;
@@ -198,8 +204,5 @@ pub fn here(meant: &Meant) -> Option<Direction> {
 
 /// Does the report's name mean this body?
 pub fn is_body(case: &Case, wanted: Body) -> bool {
-    case.report
-        .object
-        .as_ref()
-        .is_some_and(|name| body(&name.value) == Some(wanted))
+    matches!(case.named, Some(Known::Body(body)) if body == wanted)
 }

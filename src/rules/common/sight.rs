@@ -1,10 +1,13 @@
 //! What can be seen from the site: the range of altitudes that the words allow, and the allowances of the horizon rules.
 
 use super::identity::{ground, here, is_body};
-use super::words::later;
 use crate::rules::Case;
-use crate::sky::bodies::{self, Body};
-use crate::sky::{Direction, Ground, horizon};
+use crate::sky::Direction;
+use crate::sky::almanac::View;
+use crate::sky::bodies::Body;
+use crate::sky::horizon::{self, Course};
+use crate::sky::moment::Station;
+use std::rc::Rc;
 
 /// Horizontal refraction, degrees: 34′ (Explanatory Supplement 1992, 9.33; the almanacs' convention for rising and setting).
 pub const REFRACTION_DEG: f64 = 34.0 / 60.0;
@@ -42,34 +45,44 @@ fn reach_s(case: &Case) -> Option<(f64, f64)> {
     Some((before + more, instant.step_s + more))
 }
 
-/// The range over the reach of the instant of an altitude that is `at` a given UTC.
-fn range(case: &Case, nominal_deg: f64, at: impl Fn((f64, f64)) -> f64) -> Option<(f64, f64)> {
-    let instant = case.meant.instant?;
+/// The range of an altitude over the reach of the instant; its course over the site is asked for where the reach is long.
+fn range(
+    case: &Case,
+    nominal_deg: f64,
+    course: impl FnOnce(&Station, f64) -> Course,
+) -> Option<(f64, f64)> {
     let (before, after) = reach_s(case)?;
-    let mut range = (nominal_deg, nominal_deg);
-    // altitude changes by at most 15° an hour: a span of ten minutes is straight enough, and short ones need no sample
+    // altitude changes by at most 15° an hour: short spans need no sample
     if before + after <= 240.0 {
         let most = 15.05 / 3600.0 * after.max(before);
         return Some((nominal_deg - most, nominal_deg + most));
     }
+    let view = view(case)?;
+    let course = course(view.station.as_ref()?, before.max(after));
+    let mut range = (nominal_deg, nominal_deg);
+    // a span of ten minutes is straight enough
     let pieces = ((before + after) / 600.0).ceil().clamp(2.0, 160.0);
     for k in 0..=pieces as usize {
-        let altitude = at(later(
-            instant.utc,
-            -before + (before + after) * k as f64 / pieces,
-        ));
+        let seconds = -before + (before + after) * k as f64 / pieces;
+        let altitude = course.after(seconds).altitude_deg;
         range = (range.0.min(altitude), range.1.max(altitude));
     }
     Some(range)
 }
 
+/// The sky over the report's site at its instant.
+pub fn view(case: &Case) -> Option<Rc<View>> {
+    Some(
+        case.almanac
+            .view(case.meant.instant?.utc, Some(ground(case.meant)?)),
+    )
+}
+
 /// The object's altitudes. `None` without a site, an instant and a reduced place.
 pub fn altitudes(case: &Case) -> Option<Altitudes> {
     let nominal = case.meant.horizon?.altitude_deg;
-    let (ground, icrs) = (ground(case.meant)?, here(case.meant)?);
-    let (low, high) = range(case, nominal, |utc| {
-        horizon::place(icrs, utc, ground).altitude_deg
-    })?;
+    let icrs = here(case.meant)?;
+    let (low, high) = range(case, nominal, |station, _| Course::of_star(icrs, station))?;
     let words = written_slack_deg(case);
     Some(Altitudes {
         nominal_deg: nominal,
@@ -81,15 +94,7 @@ pub fn altitudes(case: &Case) -> Option<Altitudes> {
 /// The Sun's altitudes.
 pub fn sun_altitudes(case: &Case) -> Option<Altitudes> {
     let nominal = case.meant.horizon?.sun_altitude_deg;
-    let ground = ground(case.meant)?;
-    let (low, high) = range(case, nominal, |utc| {
-        horizon::place(
-            bodies::place(Body::Sun, utc, Some(ground)).icrs,
-            utc,
-            ground,
-        )
-        .altitude_deg
-    })?;
+    let (low, high) = range(case, nominal, Course::of_sun)?;
     let site = case.meant.site.as_ref().map_or(0.0, |s| s.step_deg);
     Some(Altitudes {
         nominal_deg: nominal,
@@ -138,12 +143,15 @@ pub fn declination_of_date_deg(altitude_deg: f64, azimuth_deg: f64, latitude_deg
 }
 
 /// When the object is up in the 24 hours around the instant, in words: `it is up from 22:10 to 04:35 UT`.
-pub fn when_up(case: &Case, icrs: Direction, ground: Ground) -> String {
+pub fn when_up(case: &Case, icrs: Direction) -> String {
     use super::words::clock;
-    let Some(instant) = case.meant.instant else {
+    let (Some(instant), Some(view)) = (case.meant.instant, view(case)) else {
         return String::new();
     };
-    match horizon::up(icrs, instant.utc, ground, -horizon_allowance_deg(case)) {
+    let Some(station) = &view.station else {
+        return String::new();
+    };
+    match horizon::up_at(icrs, station, -horizon_allowance_deg(case)) {
         horizon::Up::Always => "it is up all day long".to_string(),
         horizon::Up::Never => "it does not rise at all that day".to_string(),
         horizon::Up::Between(spans) if spans.is_empty() => {

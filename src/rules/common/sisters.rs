@@ -1,12 +1,13 @@
 //! Reports of one run seen together: the same object's other reports, what they agree on, and who contradicts them.
 
-use super::examine::{Selection, needs_explaining, sort, weight};
+use super::examine::{Desk, Selection, needs_explaining, sort, weight};
 use super::identity::{body, key};
 use super::motion::{self, Sighting, Steady, vector};
 use super::words::{apart, seconds_between};
 use crate::house::House;
 use crate::report::{Examined, Finding, Frame, Meant, Report, Role};
-use crate::rules::{Case, Findings, report_outlying, report_repeated, stet_idle};
+use crate::rules::{Findings, report_outlying, report_repeated, stet_idle};
+use crate::sky::almanac::Almanac;
 use crate::sky::catalogue;
 use std::collections::BTreeMap;
 
@@ -238,6 +239,7 @@ fn outlying(
     if keepers < 3 || keepers * 2 <= usable.len() {
         return;
     }
+    let almanac = Almanac::new();
     for (k, &(r, e, ref sighting, _)) in usable.iter().enumerate() {
         let distance = steady.distance_arcsec(sighting);
         let outlies = !steady.keeps[k] && distance > steady.allowed_arcsec(sighting);
@@ -288,13 +290,15 @@ fn outlying(
                 };
                 let run = &runs[r];
                 let examined = &run.examined[e];
-                let case = Case {
-                    report: &examined.report,
-                    meant: &examined.meant,
+                let desk = Desk {
                     house: run.house,
+                    to,
                     now_utc,
                     text: run.text,
+                    selection,
+                    almanac: &almanac,
                 };
+                let case = desk.case(&examined.report, &examined.meant);
                 let slips = crate::slips::explain(&case, to, Some(&sisters));
                 runs[r].examined[e].slips = slips;
             }
