@@ -117,11 +117,7 @@ fn geographic(input: Text<'_>) -> Parsed<'_, (Angle, Axis)> {
     }
     let (mut rest, mut found) = alt((hyphened, angle, angle_blanks)).parse(rest)?;
     // the full stop after a lone letter
-    if found
-        .compass
-        .is_some_and(|c| c.span.end == rest.at() && c.span.len() == 1)
-        && rest.peek() == Some('.')
-    {
+    if found.compass.is_some_and(|c| c.span.start + 1 == rest.at()) && rest.peek() == Some('.') {
         rest = rest.skip(1);
     }
     if let Some(point) = point {
