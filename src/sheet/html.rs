@@ -413,7 +413,7 @@ mod tests {
                 "<table>\n<tr><th>A</th><th>B</th></tr>\n<tr>\n<td></td>\n<td>2</td></tr></table>"
             )
             .trim(),
-            "| A | B |\n|  | 2 |"
+            "| A | B |\n|   |  2 |"
         );
     }
 
@@ -425,7 +425,7 @@ mod tests {
         assert_eq!(text.len(), before);
         assert_eq!(
             text.trim(),
-            "a       \u{a0}\n       < 5 <quill@x.example> <3"
+            "a      \u{a0}\n       < 5 <quill@x.example> <3"
         );
     }
 }
