@@ -5,6 +5,9 @@
 //! al. 1994) less the Moon of `moon98`, and the Sun about the barycentre from the four giant planets; the aberration is
 //! then off by some mas.
 
+// plain indices over arrays of known length: of these the compiler makes vectors
+#![allow(clippy::needless_range_loop)]
+
 use super::series::{BLOCK, sin_cos};
 use super::time::J2000;
 use sofars::eph::{moon98, plan94};
