@@ -65,6 +65,7 @@ pub fn quick(tdb: (f64, f64)) -> Earth {
 /// The series as the build script lays them out (`src/sky/data/tables.rs`): `TERMS` in blocks of amplitudes (au), phases
 /// (turns) and rates (turns a Julian year), and at which block each series begins, by origin (Sun to Earth, barycentre to
 /// Sun), power of the time and axis.
+#[allow(clippy::approx_constant)] // figures of a table
 mod table {
     include!(concat!(env!("OUT_DIR"), "/earth.rs"));
 }
