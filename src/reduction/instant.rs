@@ -302,25 +302,26 @@ fn clock_seconds(clock: &Clock) -> Result<(f64, bool), InstantTrouble> {
     let hour = clock.hour.value();
     let minute = clock.minute.map_or(0.0, Number::value);
     let second = clock.second.map_or(0.0, Number::value);
-    let shown = shown(clock);
+    let shown = || shown(clock);
     let hour = match clock.pm {
         None => hour,
         Some(_) if !(1.0..13.0).contains(&hour) => {
             return impossible(format!(
-                "{shown} with am or pm: such a clock goes from 1 to 12"
+                "{} with am or pm: such a clock goes from 1 to 12",
+                shown()
             ));
         }
         Some(pm) => hour % 12.0 + if pm { 12.0 } else { 0.0 },
     };
     // 24:00 is the end of the day, and no later time has an hour 24
     if hour > 24.0 || hour == 24.0 && (minute > 0.0 || second > 0.0) {
-        return impossible(format!("{shown}: a day ends at 24:00"));
+        return impossible(format!("{}: a day ends at 24:00", shown()));
     }
     if minute >= 60.0 {
-        return impossible(format!("{shown}: an hour has 60 minutes"));
+        return impossible(format!("{}: an hour has 60 minutes", shown()));
     }
     if second >= 61.0 || second >= 60.0 && minute != 59.0 {
-        return impossible(format!("{shown}: a minute has 60 seconds"));
+        return impossible(format!("{}: a minute has 60 seconds", shown()));
     }
     let leap = second >= 60.0;
     let second = if leap { second - 1.0 } else { second };

@@ -51,7 +51,7 @@ mod zone_missing;
 pub use common::examine::{Desk, Selection, examine};
 pub use common::sisters::{Run, together};
 
-pub(crate) use common::examine::of_place_and_time;
+pub(crate) use common::examine::{breaks_place_or_time, of_place_and_time};
 pub(crate) use common::sisters::Sisters;
 pub(crate) use common::words;
 pub(crate) use common::{angles, identity};

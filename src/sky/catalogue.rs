@@ -11,6 +11,7 @@ use super::icrs::{Motion, moved};
 use super::{Direction, separation_deg};
 
 /// The tables as the build script lays them out.
+#[allow(clippy::approx_constant)] // a magnitude of 6.28 is one
 mod table {
     /// One object: degrees, arcsec a year (RA × cos δ), arcsec; `v_mag` not a number for none; its name's bytes in `NAMES`.
     pub struct Row {

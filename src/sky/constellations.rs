@@ -8,6 +8,7 @@ use super::{Direction, fk4, fk5, rotate};
 use std::sync::LazyLock;
 
 /// The tables as the build script lays them out (`src/sky/data/tables.rs`).
+#[allow(clippy::approx_constant)] // figures of a table
 mod table {
     include!(concat!(env!("OUT_DIR"), "/constellations.rs"));
 }

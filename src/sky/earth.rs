@@ -5,6 +5,9 @@
 //! al. 1994) less the Moon of `moon98`, and the Sun about the barycentre from the four giant planets; the aberration is
 //! then off by some mas.
 
+// plain indices over arrays of known length: of these the compiler makes vectors
+#![allow(clippy::needless_range_loop)]
+
 use super::series::{BLOCK, sin_cos};
 use super::time::J2000;
 use sofars::eph::{moon98, plan94};
@@ -38,17 +41,22 @@ const GIANTS: [(i32, f64); 4] = [(5, 1047.355), (6, 3498.5), (7, 22_869.0), (8, 
 pub fn at(tdb: (f64, f64)) -> Earth {
     let years = ((tdb.0 - J2000) + tdb.1) / 365.25;
     if years.abs() <= 400.0 {
-        by_series(years, usize::MAX)
+        by_series(years, |_, _| usize::MAX)
     } else {
         outside(tdb)
     }
 }
 
-/// The Earth within 2e-5 au, 4e-6 of it its speed, at a TDB (or TT) instant: by the largest 32 terms of each series.
+/// The Earth within 2e-5 au, 4e-6 of it its speed, at a TDB (or TT) instant: by the largest terms.
 pub fn quick(tdb: (f64, f64)) -> Earth {
     let years = ((tdb.0 - J2000) + tdb.1) / 365.25;
     if years.abs() <= 400.0 {
-        by_series(years, 32 / BLOCK)
+        // blocks of the terms that do not grow and of those that grow with time
+        by_series(years, |from_centre, power| match (from_centre, power) {
+            (false, 0) => 32 / BLOCK,
+            (_, 0) | (false, 1) => 16 / BLOCK,
+            _ => 0,
+        })
     } else {
         outside(tdb)
     }
@@ -57,17 +65,19 @@ pub fn quick(tdb: (f64, f64)) -> Earth {
 /// The series as the build script lays them out (`src/sky/data/tables.rs`): `TERMS` in blocks of amplitudes (au), phases
 /// (turns) and rates (turns a Julian year), and at which block each series begins, by origin (Sun to Earth, barycentre to
 /// Sun), power of the time and axis.
+#[allow(clippy::approx_constant)] // figures of a table
 mod table {
     include!(concat!(env!("OUT_DIR"), "/earth.rs"));
 }
 
-/// The series of `epv00` at a time in Julian years from J2000.0, of each at most so many blocks.
-fn by_series(t: f64, blocks: usize) -> Earth {
+/// The series of `epv00` at a time in Julian years from J2000.0; of each, by origin and power, at most so many blocks.
+fn by_series(t: f64, blocks: impl Fn(bool, usize) -> usize) -> Earth {
     let [from_sun, from_centre] = [0, 1].map(|origin| {
         let mut pv: PosVel = [[0.0; 3]; 2];
         let powers = [(1.0, 0.0), (t, 1.0), (t * t, 2.0 * t)];
         for (power, (whole, less)) in powers.into_iter().enumerate() {
             for axis in 0..3 {
+                let blocks = blocks(origin == 1, power);
                 let (cos, sin) = sums(origin * 9 + power * 3 + axis, blocks, t);
                 pv[0][axis] += whole * cos;
                 pv[1][axis] += (less * cos - whole * sin) / 365.25;

@@ -15,6 +15,7 @@ use std::f64::consts::TAU;
 
 /// The tables as the build script lays them out (`src/sky/data/tables.rs`): in blocks of terms, the multipliers of each
 /// argument, then the coefficients, 0.1 µas (and 0.1 µas a century).
+#[allow(clippy::approx_constant)] // figures of a table
 mod table {
     include!(concat!(env!("OUT_DIR"), "/nutation.rs"));
 }
@@ -93,9 +94,9 @@ fn turns<const N: usize>(by: &[[f32; BLOCK]; N], arguments: &[f64; N], term: usi
 fn planetary(t: f64) -> (f64, f64) {
     // those that are not the IERS's are MHB2000's
     let arguments = [
-        2.355_555_98 + 8328.691_426_955_4 * t,
-        1.627_905_234 + 8433.466_158_131 * t,
-        5.198_466_741 + 7771.377_146_812_1 * t,
+        2.355_555_98 + 8_328.691_426_955_4 * t,
+        1.627_905_234 + 8_433.466_158_131 * t,
+        5.198_466_741 + 7_771.377_146_812_1 * t,
         2.182_439_20 - 33.757_045 * t,
         fame03(t),
         fave03(t),

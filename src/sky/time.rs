@@ -63,6 +63,7 @@ pub enum TimeError {
 
 /// The tables as the build script lays them out (`src/sky/data/tables.rs`): `LEAPS`, the MJD from which each TAI − UTC
 /// holds, whole seconds, from 1972 on; `DELTA_T`, TT − UT1 at 0h of January 1 of each year from `DELTA_T_FROM`, seconds.
+#[allow(clippy::approx_constant)] // figures of a table
 mod table {
     include!(concat!(env!("OUT_DIR"), "/time.rs"));
 }

@@ -11,9 +11,9 @@ pub mod priors;
 mod readings;
 mod sieve;
 
-use crate::report::{Becomes, Finding, Frame, Meant, Slip};
+use crate::report::{Becomes, Finding, Frame, Meant, PositionKind, Slip};
 use crate::rules::identity::Known;
-use crate::rules::{Case, Sisters, of_place_and_time};
+use crate::rules::{Case, Sisters, breaks_place_or_time, of_place_and_time};
 use crate::sky::almanac::Almanac;
 use readings::{Changes, Reading};
 
@@ -45,6 +45,7 @@ pub(crate) fn explain(case: &Case, to: Frame, sisters: Option<&Sisters>) -> Vec<
         Some(Known::Body(_)) => case.almanac,
         _ => &quick,
     };
+    let exact = case.almanac;
     let case = &Case { almanac, ..*case };
     let sieve = sieve::Sieve::new(case, sisters);
     let mut kept = Vec::new();
@@ -57,13 +58,20 @@ pub(crate) fn explain(case: &Case, to: Frame, sisters: Option<&Sisters>) -> Vec<
         }
     }
     if kept.is_empty() {
-        for (kinds, reading) in pairs(case, &broken, outlying) {
+        for (kinds, reading) in pairs(case, &broken) {
             if let Some(reading) = hold(case, kinds, &reading, sisters) {
                 kept.push(reading);
             }
         }
     }
-    offer(case, kept, to)
+    offer(
+        &Case {
+            almanac: exact,
+            ..*case
+        },
+        kept,
+        to,
+    )
 }
 
 /// Single readings of the kinds that can mend what is broken: another time does not move a star into its constellation.
@@ -112,30 +120,43 @@ fn mends(changes: Changes, rule: &str) -> bool {
     }
 }
 
-/// Pairs of the commonest slips of different sorts, for what no single one explains.
-fn pairs(case: &Case, broken: &[Finding], outlying: bool) -> Vec<(Vec<&'static str>, Reading)> {
-    let _ = (broken, outlying);
+/// Pairs of the commonest slips of different sorts, for what no single one explains: every finding must be one that either
+/// of the two can mend.
+fn pairs(case: &Case, broken: &[Finding]) -> Vec<(Vec<&'static str>, Reading)> {
     let mut list = Vec::new();
-    let mut firsts = readings::of_time(case);
-    firsts.extend(readings::of_site(case));
+    // the place of an hour angle or an altitude is a matter of time and site too
+    let any = case.report.position.kind != PositionKind::Equatorial;
+    let can = |first: Changes, second: Changes| {
+        let one_mends = |f: &Finding| mends(first, f.rule) || mends(second, f.rule);
+        any || broken.iter().all(one_mends)
+    };
     // no pairs with a changed digit: hundreds of them fit anything
     let of_place = |case: &Case| readings::of_place(case, |_| false);
+    let mut firsts = readings::of_time(case);
+    firsts.extend(readings::of_site(case));
     firsts.extend(of_place(case));
     for (k, first) in firsts.iter().enumerate() {
+        // places go second
+        let sorts: &[Changes] = match first.changes {
+            Changes::Time => &[Changes::Site, Changes::Place, Changes::Time],
+            Changes::Site => &[Changes::Site, Changes::Place],
+            Changes::Place => &[],
+        };
+        let sorts = sorts.iter().filter(|second| can(first.changes, **second));
+        let sorts: Vec<Changes> = sorts.copied().collect();
+        if sorts.is_empty() {
+            continue;
+        }
         let meant = case.mean(&first.report);
         let changed = Case {
             report: &first.report,
             meant: &meant,
             ..*case
         };
-        let seconds = match first.changes {
-            Changes::Time => [readings::of_site(&changed), of_place(&changed)].concat(),
-            Changes::Site => [readings::of_site(&changed), of_place(&changed)].concat(),
-            Changes::Place => Vec::new(),
-        };
-        let seconds = seconds.into_iter().chain(match first.changes {
+        let seconds = sorts.into_iter().flat_map(|sort| match sort {
             Changes::Time => readings::of_time(&changed),
-            _ => Vec::new(),
+            Changes::Site => readings::of_site(&changed),
+            Changes::Place => of_place(&changed),
         });
         for second in seconds {
             // each pair once, and no slip twice
@@ -178,7 +199,7 @@ fn hold(
         text: "",
         ..*case
     };
-    if !of_place_and_time(&changed).is_empty()
+    if breaks_place_or_time(&changed)
         || meant.instant_trouble.is_some() && case.meant.instant_trouble.is_none()
     {
         return None;
@@ -239,21 +260,22 @@ fn offer(case: &Case, mut kept: Vec<Kept>, to: Frame) -> Vec<Slip> {
 
 /// The members of the record that a reading changes.
 fn becomes(case: &Case, kept: &Kept, to: Frame) -> Vec<Becomes> {
-    let meant = crate::reduction::mean(&kept.reading.report, case.house, to);
     let mut list = Vec::new();
     let (old, new) = (case.report, &kept.reading.report);
-    if (old.position != new.position || old.equinoxes != new.equinoxes)
-        && let (Some(read), Some(reduced)) = (meant.read, meant.reduced)
-    {
-        list.push(Becomes::Read(read, reduced));
+    if old.position != new.position || old.equinoxes != new.equinoxes {
+        let meant = crate::reduction::mean_by(new, case.house, to, case.almanac);
+        if let (Some(read), Some(reduced)) = (meant.read, meant.reduced) {
+            list.push(Becomes::Read(read, reduced));
+        }
     }
+    // neither depends on the frame, nor on how closely the sky is computed
     if old.instants != new.instants
-        && let Some(instant) = meant.instant
+        && let Some(instant) = kept.meant.instant
     {
         list.push(Becomes::Instant(instant));
     }
     if old.site != new.site
-        && let Some(site) = meant.site
+        && let Some(site) = kept.meant.site.clone()
     {
         list.push(Becomes::Site(site));
     }

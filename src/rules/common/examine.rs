@@ -86,6 +86,19 @@ pub fn of_place_and_time(case: &Case) -> Vec<Finding> {
     findings
 }
 
+/// Is there any such finding? Stops at the first: what a trial asks. (A finding gives way only to one that stands.)
+pub fn breaks_place_or_time(case: &Case) -> bool {
+    let all = Selection::default();
+    TABLE
+        .iter()
+        .filter(|rule| rule.of_place_or_time)
+        .any(|rule| {
+            run(rule, case, &all)
+                .iter()
+                .any(|f| f.weight > Weight::Note)
+        })
+}
+
 /// What reports are examined with: all that is the same for each report of a sheet.
 #[derive(Clone, Copy)]
 pub struct Desk<'a> {
