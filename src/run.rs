@@ -99,7 +99,7 @@ pub struct Run {
     /// The rules left out.
     pub except: Vec<String>,
     /// The files done, by what the disk calls them.
-    done: HashSet<PathBuf>,
+    pub done: HashSet<PathBuf>,
 }
 
 /// Does the whole run. What fails of one sheet stops no other.

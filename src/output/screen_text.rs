@@ -164,7 +164,11 @@ pub fn write_house_error(error: &HouseError, style: Style, out: &mut impl Write)
             let window = Window::on(sheet, &name, span, &[], style.width);
             drawing.write(window, "    ", out)?;
         }
-        what_to_do(&mistake.expected, style.width, out)?;
+        let advice = match mistake.expected.strip_prefix("expected ") {
+            Some(wanted) => format!("write {wanted}"),
+            None => mistake.expected.clone(),
+        };
+        what_to_do(&advice, style.width, out)?;
     }
     writeln!(out)
 }
