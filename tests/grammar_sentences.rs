@@ -155,6 +155,9 @@ impl Coordinate {
     }
 }
 
+/// Year, month, day, and a clock time in hours and minutes.
+type Day = (i32, u32, u64, Option<(u64, u64)>);
+
 struct Sentence {
     style: &'static str,
     label: &'static str,
@@ -164,7 +167,7 @@ struct Sentence {
     dec: Coordinate,
     span: (usize, usize),
     year: Option<Year>,
-    day: Option<(i32, u32, u64, Option<(u64, u64)>)>,
+    day: Option<Day>,
 }
 
 /// Marks after the parts of an angle; where the last is `Before`, its mark stands before the decimal point.

@@ -626,6 +626,8 @@ fn told(text: &str, site: Option<&SiteMeant>) -> String {
         Err(InstantTrouble::LocalWithoutZone) => "no local zone".to_owned(),
         Err(InstantTrouble::ZoneDoubtful { .. }) => "doubtful".to_owned(),
         Err(InstantTrouble::DateMissing) => "no date".to_owned(),
+        Err(InstantTrouble::YearMissing) => "no year".to_owned(),
+        Err(InstantTrouble::ClockUnread(_)) => "clock unread".to_owned(),
     }
 }
 

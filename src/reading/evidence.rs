@@ -271,8 +271,9 @@ impl Finder<'_, '_> {
         let (rest, tag) = equinox_year(Text::window(self.text, *span)).ok()?;
         let year = run.numbers[index].0;
         // a bare year without decimals is an equinox only where it is one that people use
-        let usual =
-            year.places > 0 || year.mantissa % 25 == 0 || matches!(year.mantissa, 1855 | 1860);
+        let usual = year.places > 0
+            || year.mantissa.is_multiple_of(25)
+            || matches!(year.mantissa, 1855 | 1860);
         (rest.is_empty() && usual).then_some(Spanned::new(tag, *span))
     }
 

@@ -198,9 +198,8 @@ impl Reader<'_> {
         let words = a.span.of(self.text);
         // "Star A", "Star I": a single capital is a name
         let letter = words.chars().count() == 1 && words.starts_with(char::is_uppercase);
-        LEADING.iter().any(|w| a.means(*w))
-            && !letter
-            && !(a.means(Word::New) && !a.means(Word::Found))
+        let name = letter || a.means(Word::New) && !a.means(Word::Found);
+        !name && LEADING.iter().any(|w| a.means(*w))
     }
 }
 

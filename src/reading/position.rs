@@ -319,7 +319,7 @@ impl<'t> Finder<'_, 't> {
                 let mut p = position(kind, Some(ra), whole.then_some(dec), unit);
                 p.polar_distance = polar_distance;
                 p.labelled = true;
-                if self.blocked(i) && !(sexagesimal(&p) || !g.tags.is_empty())
+                if self.blocked(i) && !sexagesimal(&p) && g.tags.is_empty()
                     || self.small_unit_after(end, &dec)
                     || greek && !plausible(&p)
                 {
@@ -436,9 +436,7 @@ impl<'t> Finder<'_, 't> {
             let (angle, end) = self.angle_at(at, Axis::Dec, None)?;
             Some((self.axis(l)?, angle, end))
         });
-        let Some((which, two, end)) = other else {
-            return None;
-        };
+        let (which, two, end) = other?;
         let (mut one, mut two, mut end) = (one, two, end);
         let mut from_south = false;
         // "S 35° W": counted from the south through west; other quarters are not settled here
@@ -552,7 +550,7 @@ impl<'t> Finder<'_, 't> {
         }
         let led = self.word_before(i);
         let row = self.named_line(i, from) && self.short_tail(found.end);
-        let strong = marked_ra && (dec.parts().len() > 1 && dec_marked || row && dec_marked || led)
+        let strong = marked_ra && (dec_marked && (dec.parts().len() > 1 || row) || led)
             || (led || row)
                 && (marked_ra && dec.parts().len() > 1
                     || colons(&ra)

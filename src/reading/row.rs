@@ -73,6 +73,9 @@ pub fn read(sheet: &Sheet, head: &Head, line: usize) -> Vec<Row> {
     part(text, head, line, body, &pairs).into_iter().collect()
 }
 
+/// One column's part of a shared coordinate: which, its number, its sign, its place.
+type SharedPart = (char, Number, Option<Sign>, Span);
+
 /// What was gathered from the cells of one object.
 #[derive(Default)]
 struct Cells {
@@ -88,7 +91,7 @@ struct Cells {
     tags: Vec<Spanned<Tagged>>,
     said: Statements,
     /// Coordinates in columns of their own for degrees, minutes and seconds: of RA, Dec, latitude, longitude.
-    split: [Vec<(char, Number, Option<Sign>, Span)>; 4],
+    split: [Vec<SharedPart>; 4],
     sign: Option<Spanned<Sign>>,
     /// The time read stands in a column of universal time.
     universal: bool,

@@ -39,10 +39,7 @@ pub fn run(input: Text<'_>) -> Parsed<'_, Run> {
     }
     let mut numbers = Vec::new();
     let mut rest = rest;
-    loop {
-        let Ok((after, value)) = number(rest) else {
-            break;
-        };
+    while let Ok((after, value)) = number(rest) {
         if glued(after) {
             // "7 14 40S": a letter of the compass ends it; another letter within the first three numbers makes it unreadable
             let point = after.as_str().starts_with(['N', 'S', 'E', 'W'])

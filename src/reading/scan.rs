@@ -248,10 +248,10 @@ fn atom<'a>(rest: Text<'a>, c: char, after_label: bool, awaiting: bool) -> (Text
         }
         return (r, Kind::Run(found));
     }
-    if c == 'J' || c == 'B' || c == 'j' || numeric {
-        if let Ok((r, t)) = equinox_year(rest) {
-            return (r, Kind::Equinox(t));
-        }
+    if (c == 'J' || c == 'B' || c == 'j' || numeric)
+        && let Ok((r, t)) = equinox_year(rest)
+    {
+        return (r, Kind::Equinox(t));
     }
     if let Some((r, p)) = phrase(rest) {
         return (r, Kind::Word(p));

@@ -309,9 +309,7 @@ fn mentions(text: &str, part: Span) -> Vec<Spanned<String>> {
         at += piece.len();
         if word.chars().count() > 2 && word.starts_with(char::is_uppercase) {
             run.push(span);
-            for k in run.len().saturating_sub(3)..run.len() {
-                found.push(run[k].cover(span));
-            }
+            found.extend(run.iter().rev().take(3).map(|first| first.cover(span)));
         }
         // anything but one blank after it ends the run
         if word.is_empty() || !piece.ends_with(' ') || !word.starts_with(char::is_uppercase) {

@@ -99,10 +99,8 @@ impl<'t> Gatherer<'_, 't> {
                 }
                 self.out.instants.push((**instant).clone());
             }
-            Kind::Equinox(t) => {
-                if !t.weak || (t.tag.misspelt && self.bracketed(i)) {
-                    self.out.tags.push(Spanned::new(*t, atom.span));
-                }
+            Kind::Equinox(t) if (!t.weak || (t.tag.misspelt && self.bracketed(i))) => {
+                self.out.tags.push(Spanned::new(*t, atom.span));
             }
             Kind::Uncertainty(u) if self.led_by_position(i) => {
                 let arcsec = match u.mark {
@@ -203,26 +201,26 @@ impl<'t> Gatherer<'_, 't> {
                 self.out.roles.push(Spanned::new(role, atom.span));
             }
         }
-        if is(Word::Object) && self.label_mark(i) {
-            if let Some((name, next)) = self.rest_of_line(i + 1, &[';', '|']) {
-                // an object's name may hold words for something new
-                for k in i + 1..next {
-                    if self.atoms[k].means(Word::New) && self.out.claims_new.is_none() {
-                        self.out.claims_new = Some(self.atoms[k].span);
-                    }
+        if is(Word::Object)
+            && self.label_mark(i)
+            && let Some((name, next)) = self.rest_of_line(i + 1, &[';', '|'])
+        {
+            // an object's name may hold words for something new
+            for k in i + 1..next {
+                if self.atoms[k].means(Word::New) && self.out.claims_new.is_none() {
+                    self.out.claims_new = Some(self.atoms[k].span);
                 }
-                self.out.objects.push(name);
-                return next;
             }
+            self.out.objects.push(name);
+            return next;
         }
         if is(Word::Observer)
             && (self.label_mark(i)
                 || self.verb_phrase(i, &["by", "par", "von", "da", "dal", "por", "door", "z"]))
+            && let Some((name, next)) = self.rest_of_line(i + 1, &[';', ',', '(', '|', '['])
         {
-            if let Some((name, next)) = self.rest_of_line(i + 1, &[';', ',', '(', '|', '[']) {
-                self.out.observers.push(name);
-                return next;
-            }
+            self.out.observers.push(name);
+            return next;
         }
         if is(Word::Site)
             && (self.label_mark(i)

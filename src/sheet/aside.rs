@@ -320,7 +320,12 @@ fn inner_head(text: &str, lines: &[Line], at: usize) -> Option<(usize, Option<Sp
     let address = Span::new(first.body.start, lines[at + count - 1].body.end)
         .of(text)
         .contains('@');
-    if !(subject && others > 0 || subject && address || address && others > 0) {
+    // two of the three prove it
+    let proofs = [subject, address, others > 0]
+        .iter()
+        .filter(|p| **p)
+        .count();
+    if proofs < 2 {
         return None;
     }
     let words = from.of(text);

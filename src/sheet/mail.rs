@@ -228,7 +228,7 @@ fn is_mail(fields: &[Field]) -> bool {
         .any(|f| matches!(&*f.name, "date" | "sent") && (address || posted(&f.value)));
     machine >= 2
         || machine == 1 && fields.len() > 1
-        || has("from") && (has("subject") || has("to") && (address || dated) || dated)
+        || has("from") && (has("subject") || dated || has("to") && address)
         || has("subject") && (has("to") || dated)
 }
 
