@@ -243,7 +243,7 @@ fn data_goes_to_standard_output_and_words_beside_it() {
     let table = colure(dir.path(), &["reduce", NOW[0], NOW[1], "bad.txt"]);
     assert!(table.out.starts_with("Object"), "{}", table.out);
     assert!(
-        table.err.contains("bad.txt:") && table.err.contains("reject"),
+        table.err.contains("bad.txt, line 2:") && table.err.contains("reject"),
         "{}",
         table.err
     );

@@ -91,7 +91,8 @@ mod tests {
             "2026-11-01T01:00:00+01:00",
         ] {
             let Now((a, b)) = instant(word).unwrap_or_else(|e| panic!("{word}: {e}"));
-            assert_eq!(a + b, 2_461_345.5, "{word}");
+            // a two-part date: the sum may differ in its last bits
+            assert!((a + b - 2_461_345.5).abs() < 1e-8, "{word}: {a} + {b}");
         }
         let told = |word: &str| instant(word).err().unwrap_or_default();
         assert!(told("2026-02-30").contains("February 2026 has 28 days"));

@@ -212,7 +212,7 @@ impl<'t> Reader<'t> {
         let own = scene.span(own_from, own_to);
         let said = scope::own_words(scene, n, part, own, said, self);
         // a role is what the nearest words before the position on its line say, else the part's
-        let start = scope::sentence_start(scene, n).max(own.start);
+        let start = scope::sentence_start(scene, part, n).max(own.start);
         let before = Span::new(start, scene.all[f.first].span.start.max(start));
         let role = said
             .roles

@@ -106,7 +106,7 @@ impl Finder<'_, '_> {
     /// Few words after it on its line: the row of a list, not the middle of a sentence.
     pub(super) fn short_tail(&self, end: usize) -> bool {
         let mut words = 0;
-        for atom in &self.atoms[end.min(self.atoms.len())..] {
+        for atom in self.atoms.iter().skip(end).take(60) {
             match &atom.kind {
                 Kind::LineEnd => break,
                 Kind::Mark(';' | '.') => break,
@@ -181,7 +181,8 @@ impl Finder<'_, '_> {
     /// First on its line, or after a name and perhaps a colon or a date: the row of a list.
     pub(super) fn named_line(&self, i: usize, from: usize) -> bool {
         let mut words = 0;
-        for k in (from..i).rev() {
+        // a row's head is short: no more than forty words are looked at
+        for k in (from.max(i.saturating_sub(40))..i).rev() {
             match &self.atoms[k].kind {
                 Kind::LineEnd => break,
                 Kind::Plain | Kind::Word(_) => words += 1,

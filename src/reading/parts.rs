@@ -95,6 +95,43 @@ pub(super) fn parts(reader: &Reader, scene: &Scene) -> Vec<Part> {
         }
     }
     parts
+        .into_iter()
+        .flat_map(|p| each_alone(scene, p))
+        .collect()
+}
+
+/// A line with hundreds of positions is no sentence: each takes what stands between its neighbours.
+fn each_alone(scene: &Scene, part: Part) -> Vec<Part> {
+    if part.positions.len() <= 100 {
+        return vec![part];
+    }
+    let found = scene.found;
+    part.positions
+        .clone()
+        .map(|n| {
+            let lead = if n == part.positions.start {
+                part.lead
+            } else {
+                found[n - 1].end
+            };
+            let to = if n + 1 == part.positions.end {
+                part.to
+            } else {
+                found[n + 1].first
+            };
+            let from = if n == part.positions.start {
+                part.from
+            } else {
+                lead
+            };
+            Part {
+                from,
+                lead,
+                to,
+                positions: n..n + 1,
+            }
+        })
+        .collect()
 }
 
 /// Records that begin with the same label ("Object:", "Date:", an equinox, a date): where each begins. `None` where the block is a list.

@@ -36,7 +36,7 @@ pub(super) fn own_words(
             others.push(scene.span(scene.line_start(lines.0), scene.line_start(lines.1 + 1)));
         }
     }
-    let sentence = sentences(scene, first_line, last_line);
+    let sentence = sentences(scene, part, first_line, last_line);
     let foreign = |s: Span| others.iter().any(|o| o.contains(s));
     let nearest =
         |spans: Vec<Span>, standing: bool| nearest(spans, own, here, &sharing, &sentence, standing);
@@ -182,11 +182,11 @@ fn nearest(
 }
 
 /// Where the sentence of position `n` begins.
-pub(super) fn sentence_start(scene: &Scene, n: usize) -> usize {
+pub(super) fn sentence_start(scene: &Scene, part: &Part, n: usize) -> usize {
     let f = &scene.found[n];
     let (first, last) = scene.lines_of(f);
     let here = scene.all[f.first].span.start;
-    sentences(scene, first, last)
+    sentences(scene, part, first, last)
         .ends
         .into_iter()
         .rfind(|e| *e <= here)
@@ -205,9 +205,9 @@ impl Sentences {
 }
 
 /// A point after a word or a statement, before a capital letter or a digit, ends a sentence; a point after an abbreviation does not.
-fn sentences(scene: &Scene, first_line: usize, last_line: usize) -> Sentences {
-    let from = scene.line_start(first_line);
-    let to = scene.line_start(last_line + 1);
+fn sentences(scene: &Scene, part: &Part, first_line: usize, last_line: usize) -> Sentences {
+    let from = scene.line_start(first_line).max(part.lead);
+    let to = scene.line_start(last_line + 1).min(part.to);
     let mut ends = Vec::new();
     for k in from..to {
         let atom = &scene.all[k];

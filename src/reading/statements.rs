@@ -682,11 +682,16 @@ impl<'t> Gatherer<'_, 't> {
 
     /// "Last negative:" opens its line: a label of words that mean no date, time, site or object.
     fn foreign_label(&self, i: usize) -> bool {
+        // a label is short: what begins farther back is none
         let line = self.atoms[i].line;
-        let start = self.atoms[..i]
-            .iter()
-            .rposition(|a| a.line != line || matches!(a.kind, Kind::LineEnd))
-            .map_or(0, |k| k + 1);
+        let floor = i.saturating_sub(6);
+        let Some(start) = (floor..i).rev().find(|&k| {
+            k == 0
+                || self.atoms[k - 1].line != line
+                || matches!(self.atoms[k - 1].kind, Kind::LineEnd)
+        }) else {
+            return false;
+        };
         let label = &self.atoms[start..i];
         let Some((last, words)) = label.split_last() else {
             return false;
@@ -717,9 +722,10 @@ impl<'t> Gatherer<'_, 't> {
 
     /// A line that speaks of positions, or one closed by a colon, and holds none.
     fn heads_positions(&self, i: usize) -> bool {
+        // such a line is short: at most a dozen words on either side are looked at
         let line = self.atoms[i].line;
-        let of_line: Vec<&Atom> = self
-            .atoms
+        let window = i.saturating_sub(13)..self.atoms.len().min(i + 14);
+        let of_line: Vec<&Atom> = self.atoms[window]
             .iter()
             .filter(|a| a.line == line && !matches!(a.kind, Kind::LineEnd))
             .collect();
