@@ -75,9 +75,12 @@ impl<'a> Text<'a> {
         self.whole.get(..self.start)?.chars().next_back()
     }
 
-    /// All the text before the window.
+    /// The text right before the window: its last two dozen bytes at most.
     pub fn behind(self) -> &'a str {
-        self.whole.get(..self.start).unwrap_or("")
+        let from = self
+            .whole
+            .floor_char_boundary(self.start.saturating_sub(24));
+        self.whole.get(from..self.start).unwrap_or("")
     }
 
     /// The window without its first `bytes` bytes.
