@@ -286,7 +286,11 @@ fn own_objects_are_read_from_csv() {
         ("name,dec\n", "name,dec", "columns"),
         ("name;ra;dec\nA;1 00 00;5\n", "name;ra;dec", "semicolons"),
         ("name,ra,dec,radius\nA,1 00 00,5,2'\n", "2'", "radius"),
-        ("name,ra,dec,equinox\nA,1 00 00,5,J200\n", "J200", "J200"),
+        (
+            "name,ra,dec,equinox\nA,1 00 00,5,J200\n",
+            "J200",
+            "equinox 200",
+        ),
     ] {
         std::fs::write(&list, text).unwrap();
         let error = house::load(&path, &[]).unwrap_err();

@@ -35,7 +35,10 @@ pub(super) fn instant(word: &str) -> Result<Now, String> {
     let clock = clock.trim();
     let timestamp = match (clock, clock.parse::<Time>()) {
         ("", _) => jiff::tz::Offset::UTC.to_timestamp(day.at(0, 0, 0, 0)),
-        (_, Ok(time)) => jiff::tz::Offset::UTC.to_timestamp(day.to_datetime(time)),
+        // a time alone: with an offset it is read as a whole below
+        (_, Ok(time)) if !clock.contains(['+', '-']) => {
+            jiff::tz::Offset::UTC.to_timestamp(day.to_datetime(time))
+        }
         // an offset from UTC, perhaps
         _ => plain.parse::<jiff::Timestamp>(),
     };
