@@ -73,7 +73,11 @@ fn wrong_with(r: &Report, m: &Meant, meaning: &str) -> Vec<String> {
         let (value, step) = told(field[axis]);
         match angle {
             None => wrong.push(format!("coordinate {axis} unread")),
-            Some(a) => {
+            Some(mut a) => {
+                // an hour angle is told west positive, whatever letter says so
+                if p.kind == PositionKind::HourAngle {
+                    a.compass = None;
+                }
                 if (a.value() * scale - value).abs() > 1e-9
                     || (a.step() * scale * 3600.0 / step - 1.0).abs() > 1e-9
                 {
