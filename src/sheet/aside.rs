@@ -305,7 +305,8 @@ fn inner_head(text: &str, lines: &[Line], at: usize) -> Option<(usize, Option<Sp
     }
     let (mut count, mut from, mut subject, mut others) = (0, None, false, 0);
     while let Some(line) = lines.get(at + count) {
-        if line.body.is_empty() || line.depth != first.depth || line.aside {
+        // a head has a dozen lines; a list of labels as long as this is none
+        if count > 60 || line.body.is_empty() || line.depth != first.depth || line.aside {
             break;
         }
         match label(line) {
