@@ -41,15 +41,14 @@ pub fn run(input: Text<'_>) -> Parsed<'_, Run> {
     let mut rest = rest;
     while let Ok((after, value)) = number(rest) {
         if glued(after) {
-            // "7 14 40S": a letter of the compass ends it; another letter within the first three numbers makes it unreadable
+            // "7 14 40S": a letter of the compass ends it
             let point = after.as_str().starts_with(['N', 'S', 'E', 'W'])
                 && !after.as_str()[1..].starts_with(char::is_alphanumeric);
             if point && !numbers.is_empty() {
                 numbers.push((value, rest.span_to(after)));
                 break;
             }
-            let whole = numbers.iter().all(|(n, _): &(Number, Span)| n.places == 0);
-            if numbers.is_empty() || numbers.len() < 3 && whole && value.whole_digits <= 2 {
+            if numbers.is_empty() {
                 return no(input);
             }
             break;
