@@ -335,6 +335,22 @@ pub enum Nearness {
     Standing,
 }
 
+/// The English names of the months.
+pub const MONTHS: [&str; 12] = [
+    "January",
+    "February",
+    "March",
+    "April",
+    "May",
+    "June",
+    "July",
+    "August",
+    "September",
+    "October",
+    "November",
+    "December",
+];
+
 /// A date as written.
 #[derive(Clone, Copy, PartialEq, Debug)]
 pub enum DateWritten {

@@ -1,25 +1,11 @@
 //! `--now`: an instant as a person writes it, UTC: a date alone (0h), with a clock time, or an ISO 8601 time stamp.
 
 use super::{Now, now_at};
+use crate::report::MONTHS;
 use jiff::civil::{Date, Time};
 
 const EXPECTED: &str =
     "expected a date such as 2026-11-01, with or without a time: 2026-11-01 12:00 UT";
-
-const MONTHS: [&str; 12] = [
-    "January",
-    "February",
-    "March",
-    "April",
-    "May",
-    "June",
-    "July",
-    "August",
-    "September",
-    "October",
-    "November",
-    "December",
-];
 
 /// Reads what counts as now.
 pub(super) fn instant(word: &str) -> Result<Now, String> {

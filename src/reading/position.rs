@@ -26,6 +26,19 @@ pub struct Found {
     pub end: usize,
 }
 
+impl Found {
+    /// A position with its tags, found in the atoms `first..end`; no other forms yet.
+    fn of(position: Position, tags: Vec<Spanned<Tagged>>, first: usize, end: usize) -> Found {
+        Found {
+            position,
+            other_forms: Vec::new(),
+            tags,
+            first,
+            end,
+        }
+    }
+}
+
 /// What two coordinates a label speaks of.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
 pub(super) enum Axis {
@@ -348,14 +361,7 @@ impl<'t> Finder<'_, 't> {
                 }
                 let mut p = position(kind, Some(ra), None, unit);
                 p.labelled = true;
-                Some(Found {
-                    position: p,
-                    other_forms: Vec::new(),
-                    tags: g.tags,
-
-                    first: i,
-                    end: used,
-                })
+                Some(Found::of(p, g.tags, i, used))
             }
         }
     }
@@ -390,14 +396,7 @@ impl<'t> Finder<'_, 't> {
                 if self.blocked(i) && !sexagesimal(&p) || greek && !plausible(&p) {
                     return None;
                 }
-                Some(Found {
-                    position: p,
-                    other_forms: Vec::new(),
-                    tags: g.tags,
-
-                    first: i,
-                    end,
-                })
+                Some(Found::of(p, g.tags, i, end))
             }
             None => {
                 let clear =
@@ -408,14 +407,7 @@ impl<'t> Finder<'_, 't> {
                 let mut p = position(PositionKind::Equatorial, None, Some(dec), None);
                 p.polar_distance = axis == Axis::PolarDistance;
                 p.labelled = true;
-                Some(Found {
-                    position: p,
-                    other_forms: Vec::new(),
-                    tags: g.tags,
-
-                    first: i,
-                    end: used,
-                })
+                Some(Found::of(p, g.tags, i, used))
             }
         }
     }
@@ -490,14 +482,7 @@ impl<'t> Finder<'_, 't> {
                 _ => break,
             }
         }
-        Some(Found {
-            position: p,
-            other_forms: Vec::new(),
-            tags: Vec::new(),
-
-            first: i,
-            end: last,
-        })
+        Some(Found::of(p, Vec::new(), i, last))
     }
 
     // ------------------------------------------------------------------------------------------ bare

@@ -4,8 +4,8 @@ pub mod zones;
 
 use crate::house::House;
 use crate::report::{
-    Clock, DateWritten, InstantMeant, InstantTrouble, InstantWritten, JulianCount, Number, Report,
-    SiteMeant, Zone,
+    Clock, DateWritten, InstantMeant, InstantTrouble, InstantWritten, JulianCount, MONTHS, Number,
+    Report, SiteMeant, Zone,
 };
 use crate::sky::time;
 use jiff::civil::DateTime;
@@ -155,21 +155,6 @@ struct Place<'a> {
     site: Option<&'a SiteMeant>,
     beside: Option<&'a Zone>,
 }
-
-const MONTHS: [&str; 12] = [
-    "January",
-    "February",
-    "March",
-    "April",
-    "May",
-    "June",
-    "July",
-    "August",
-    "September",
-    "October",
-    "November",
-    "December",
-];
 
 /// The modified Julian day number of a date, or why there is no such day.
 fn day_number(date: &Date, day: u64) -> Result<i64, InstantTrouble> {

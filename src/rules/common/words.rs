@@ -1,6 +1,6 @@
 //! Numbers as people say them, with no more digits than deserved, and the words a finding points at.
 
-use crate::report::{Angle, EquinoxTag, EquinoxYear, PlaceWord, SystemWord, YearLetter};
+use crate::report::{Angle, EquinoxTag, EquinoxYear, MONTHS, PlaceWord, SystemWord, YearLetter};
 use crate::rules::Case;
 use crate::span::Span;
 
@@ -147,21 +147,6 @@ pub fn later(utc: (f64, f64), seconds: f64) -> (f64, f64) {
 pub fn seconds_between(a: (f64, f64), b: (f64, f64)) -> f64 {
     ((b.0 - a.0) + (b.1 - a.1)) * 86_400.0
 }
-
-const MONTHS: [&str; 12] = [
-    "January",
-    "February",
-    "March",
-    "April",
-    "May",
-    "June",
-    "July",
-    "August",
-    "September",
-    "October",
-    "November",
-    "December",
-];
 
 /// The English name of a month, 1 to 12.
 pub fn month(number: u32) -> &'static str {
